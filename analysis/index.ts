@@ -1,3 +1,37 @@
 /** The only door to the science: what main/ and renderer/ may import. */
 export { type Doubt, type DoubtCode, doubtCodes } from './doubts/doubt.ts';
+export { quantify } from './quantify.ts';
+export { embeddedFrom } from './reading/embedded.ts';
+export type { Quantity, Reading, ReadSpectrum, RefusedPart } from './reading/reading.ts';
 export { Refusal, type RefusalText, refusalSentence, type Where } from './refusal.ts';
+export { absorbingSpecies, fitSettings, productSpecies, speciesName } from './sheet/defaults.ts';
+export { newSheet } from './sheet/new-sheet.ts';
+export { type OpenedSheetText, openSheet } from './sheet/open-sheet.ts';
+export type {
+  EmbeddedSpectrum,
+  Sheet,
+  SheetAliquot,
+  SheetDilution,
+  SheetFit,
+  SheetRun,
+  SheetSpecies,
+  SheetSpectrum,
+  SheetStandard,
+  SheetStock,
+} from './sheet/schema.ts';
+export { sheetText } from './sheet/sheet-text.ts';
+export { embedSpectra, filesOf } from './sheet/spectra.ts';
+export {
+  type AliquotCurves,
+  type AliquotResult,
+  type BudgetShare,
+  type ConcentrationResult,
+  leftOut,
+  type Quantification,
+  type Quantified,
+  type RatioResult,
+  type Results,
+  type RunResult,
+  type SplitFraction,
+  type StandardCurves,
+} from './split/results.ts';

@@ -1,0 +1,38 @@
+import type { Sheet, SheetFit, SheetSpecies } from './schema.ts';
+
+/** The defaults of SHEET.md, applied when the sheet is used; the sheet itself stays as written. */
+export interface FitSettings {
+  /** Null: the range that all spectra share. */
+  readonly windowNm: readonly [number, number] | null;
+  readonly excludeNm: readonly (readonly [number, number])[];
+  readonly baseline: NonNullable<SheetFit['baseline']>;
+  readonly shift: NonNullable<SheetFit['shift']>;
+  readonly upperAbsorbance: number;
+  readonly noise: { readonly constant: number; readonly transmittance: number } | null;
+}
+
+export function fitSettings(sheet: Sheet): FitSettings {
+  const fit = sheet.fit ?? {};
+  return {
+    windowNm: fit.windowNm ?? null,
+    excludeNm: fit.excludeNm ?? [],
+    baseline: fit.baseline ?? 'offset',
+    shift: fit.shift ?? 'none',
+    upperAbsorbance: fit.upperAbsorbance ?? 2,
+    noise: fit.noise ?? null,
+  };
+}
+
+/** A species absorbs unless the sheet says that it does not. */
+export function absorbingSpecies(sheet: Sheet): readonly SheetSpecies[] {
+  return sheet.species.filter(({ absorbs }) => absorbs !== false);
+}
+
+/** Products: at least one core and one arm built in. */
+export function productSpecies(sheet: Sheet): readonly SheetSpecies[] {
+  return sheet.species.filter(({ cores, arms }) => cores >= 1 && arms >= 1);
+}
+
+export function speciesName(sheet: Sheet, id: string): string {
+  return sheet.species.find((species) => species.id === id)?.name || id;
+}

@@ -1,0 +1,31 @@
+import type { EmbeddedSpectrum, Sheet, SheetSpectrum } from './schema.ts';
+
+/** Paths of the files that the sheet still points at, each once, in the order of the sheet. */
+export function filesOf(sheet: Sheet): readonly string[] {
+  const files = new Set<string>();
+  for (const { spectrum } of [...(sheet.standards ?? []), ...(sheet.aliquots ?? [])]) {
+    if (spectrum.file !== undefined) files.add(spectrum.file);
+  }
+  return [...files];
+}
+
+/**
+ * The sheet with every file that `embeddedFor` knows taken in, so that it can be mailed as one
+ * file. What it does not know (null) stays a reference.
+ */
+export function embedSpectra(
+  sheet: Sheet,
+  embeddedFor: (file: string, trace: number) => EmbeddedSpectrum | null,
+): Sheet {
+  const taken = <T extends { readonly spectrum: SheetSpectrum }>(entry: T): T => {
+    const { file, trace, ...rest } = entry.spectrum;
+    if (file === undefined) return entry;
+    const embedded = embeddedFor(file, trace ?? 0);
+    return embedded ? { ...entry, spectrum: { ...rest, embedded } } : entry;
+  };
+  return {
+    ...sheet,
+    ...(sheet.standards ? { standards: sheet.standards.map(taken) } : {}),
+    ...(sheet.aliquots ? { aliquots: sheet.aliquots.map(taken) } : {}),
+  };
+}
