@@ -25,7 +25,7 @@ export const standardSolutions: readonly StandardSolution[] = [
   { id: 'arm-A1', stock: arm, concentrationMolPerL: 5.0e-5 },
   { id: 'arm-A2', stock: arm, concentrationMolPerL: 1.1e-4 },
   { id: 'mono-A1', stock: monoA, concentrationMolPerL: 2.0e-5 },
-  { id: 'mono-A2', stock: monoA, concentrationMolPerL: 5.6e-5 },
+  { id: 'mono-A2', stock: monoA, concentrationMolPerL: 5.4e-5 },
   { id: 'mono-B1', stock: monoB, concentrationMolPerL: 3.6e-5 },
   { id: 'bis-A1', stock: bis, concentrationMolPerL: 1.1e-5 },
   { id: 'bis-A2', stock: bis, concentrationMolPerL: 2.0e-5 },
