@@ -4,12 +4,12 @@ import type { DrawnAliquot, DrawnBand, DrawnStandard } from './recording.ts';
 import { type Composition, type SampleRun, sampleRuns } from './runs.ts';
 
 /** How the products with core and arm divide: mono + bis = 1. */
-export interface TrueSplit {
+interface TrueSplit {
   readonly fractions: { readonly mono: number; readonly bis: number };
   readonly ratioMonoToBis: number;
 }
 
-export interface TrueRun extends TrueSplit {
+interface TrueRun extends TrueSplit {
   readonly run: string;
   readonly flaskMolPerL: Composition;
   /** Arms built into mono and bis, per core charged. */
@@ -20,7 +20,7 @@ export interface TrueRun extends TrueSplit {
   readonly fed?: CoreFedIntoArm;
 }
 
-export interface TrueAliquot extends TrueSplit {
+interface TrueAliquot extends TrueSplit {
   readonly aliquot: string;
   readonly run: string;
   readonly dilutionFactor: number;
