@@ -12,6 +12,8 @@ export type Quantity =
  */
 export interface ReadSpectrum {
   readonly name: string;
+  /** Zero-based position among all traces of the file, refused ones counted (a sheet's `trace`). */
+  readonly trace?: number;
   /** The unit of the abscissa in the file, "nm" for now. */
   readonly xUnit: string;
   readonly quantity: Quantity;
