@@ -26,7 +26,7 @@ const downwards = layers.map((layer, index) => ({
         .slice(layer === 'spectrum' ? index : 0, index + 1)
         .map((allowed) => `^analysis/${allowed}/`),
       '^analysis/distributions/',
-      '^analysis/refusal[.]ts$',
+      '^analysis/(refusal|program)[.]ts$',
     ],
   },
 }));

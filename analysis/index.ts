@@ -1,8 +1,12 @@
 /** The only door to the science: what main/ and renderer/ may import. */
 export { type Doubt, type DoubtCode, doubtCodes } from './doubts/doubt.ts';
-export { quantify } from './quantify.ts';
+export { programName } from './program.ts';
+export { type PreparedSheet, prepare, quantify, quantifyAliquot } from './quantify.ts';
 export { embeddedFrom } from './reading/embedded.ts';
+export { readExport, tooLarge } from './reading/read-export.ts';
 export type { Quantity, Reading, ReadSpectrum, RefusedPart } from './reading/reading.ts';
+export { readingToJson } from './reading/reading-to-json.ts';
+export { type SheetSource, sheetSources } from './reading/sheet-sources.ts';
 export { Refusal, type RefusalText, refusalSentence, type Where } from './refusal.ts';
 export { absorbingSpecies, fitSettings, productSpecies, speciesName } from './sheet/defaults.ts';
 export { newSheet } from './sheet/new-sheet.ts';

@@ -1,12 +1,147 @@
-import type { Reading } from './reading/reading.ts';
-import type { Sheet } from './sheet/schema.ts';
-import type { Quantification } from './split/results.ts';
+import { allDoubts } from './doubts/all-doubts.ts';
+import { programName } from './program.ts';
+import type { Reading, RefusedPart } from './reading/reading.ts';
+import { resolveSpectrum } from './reading/resolve-spectrum.ts';
+import { Refusal, refusalSentence } from './refusal.ts';
+import { type FitSettings, fitSettings, productSpecies, speciesName } from './sheet/defaults.ts';
+import type { Sheet, SheetAliquot } from './sheet/schema.ts';
+import { unknownMembers } from './sheet/unknown-members.ts';
+import type { AliquotEstimate } from './split/aliquot-estimate.ts';
+import { amountEvidence, estimateOf, fitResult } from './split/aliquot-result.ts';
+import { budgetOf } from './split/budget.ts';
+import { comparisonsOf } from './split/compare-runs.ts';
+import { concentrationsOf } from './split/concentrations.ts';
+import { aliquotCurves, standardCurves } from './split/curves.ts';
+import { dilutionOf } from './split/dilution.ts';
+import { ratiosOf, splitOf } from './split/fractions.ts';
+import type { AliquotCurves, AliquotResult, Quantification } from './split/results.ts';
+import { runResult } from './split/runs.ts';
+import { type StandardsLibrary, standardsLibrary } from './standards/library.ts';
+import type { SpeciesStandard } from './standards/species-standard.ts';
+import { commonEffects, errorSources } from './unmixing/error-sources.ts';
+import { unmix } from './unmixing/unmix.ts';
 
 /**
  * The whole sheet, computed. `readings` holds one reading for each file that the sheet points at
- * (`filesOf`). Throws a `Refusal` where the sheet as a whole cannot be used; an aliquot that
- * cannot be fitted is listed in `results.refused` instead.
+ * (`filesOf`). Throws a `Refusal` where the sheet as a whole cannot be used (a standard is missing
+ * or unreadable); an aliquot that cannot be fitted is listed in `results.refused` instead.
  */
 export function quantify(sheet: Sheet, readings: ReadonlyMap<string, Reading>): Quantification {
-  throw new Error(`in the making: ${sheet.title} ${readings.size}`);
+  const prepared = prepare(sheet, readings);
+  const done: QuantifiedAliquot[] = [];
+  const refused: RefusedPart[] = [];
+  for (const aliquot of sheet.aliquots ?? []) {
+    try {
+      done.push(quantifyAliquot(prepared, aliquot, readings));
+    } catch (error) {
+      refused.push(refusedAliquot(aliquot, error));
+    }
+  }
+  const products = productPositions(prepared);
+  const runs = (sheet.runs ?? []).map((run) => ({
+    run,
+    aliquots: done.map(({ estimate }) => estimate).filter((estimate) => estimate.run === run.id),
+  }));
+  return {
+    results: {
+      format: 'monobis-results',
+      version: 1,
+      program: programName,
+      title: sheet.title ?? '',
+      aliquots: done.map(({ result }) => result),
+      runs: runs.map(({ run, aliquots }) => runResult(sheet, run, aliquots, products)),
+      comparisons: comparisonsOf(
+        runs.map(({ run, aliquots }) => ({ run: run.id, aliquots })),
+        products,
+      ),
+      refused,
+      warnings: unknownMembers(sheet),
+    },
+    curves: done.map(({ curves }) => curves),
+    standards: prepared.library.standards.map(standardCurves),
+  };
+}
+
+/** A sheet with its standards made ready: what all its aliquots share. */
+export interface PreparedSheet {
+  readonly sheet: Sheet;
+  readonly settings: FitSettings;
+  readonly library: StandardsLibrary;
+}
+
+export function prepare(sheet: Sheet, readings: ReadonlyMap<string, Reading>): PreparedSheet {
+  const settings = fitSettings(sheet);
+  return { sheet, settings, library: standardsLibrary(sheet, readings, settings) };
+}
+
+export interface QuantifiedAliquot {
+  readonly result: AliquotResult;
+  readonly curves: AliquotCurves;
+  readonly estimate: AliquotEstimate;
+}
+
+/** One aliquot: spectrum, unmixing, uncertainty, split, doubts. Throws a `Refusal` where it cannot be. */
+export function quantifyAliquot(
+  prepared: PreparedSheet,
+  aliquot: SheetAliquot,
+  readings: ReadonlyMap<string, Reading>,
+): QuantifiedAliquot {
+  const { sheet, settings, library } = prepared;
+  const what = `aliquot ${aliquot.id}`;
+  const standards = library.standards;
+  const crude = resolveSpectrum(aliquot.spectrum, readings, 'absorbance', what);
+  const pathLengthCm = aliquot.pathLengthCm ?? 1;
+  const unmixing = unmix({ crude, standards, pathLengthCm, settings, what });
+  const sources = errorSources(unmixing, standards);
+  const estimate = estimateOf(unmixing, sources);
+  const products = productPositions(prepared);
+  const dilution = dilutionOf(aliquot);
+  const concentrations = concentrationsOf(estimate, dilution);
+  const doubts = allDoubts({
+    crude,
+    unmixing,
+    standards,
+    sources,
+    settings,
+    amounts: amountEvidence(concentrations),
+    notGiven: [...library.notGiven, ...(dilution.notGiven ? [dilution.notGiven] : [])],
+    nameOf: (species) => speciesName(sheet, species),
+  });
+  const run = aliquot.run ?? null;
+  return {
+    result: {
+      aliquot: aliquot.id,
+      run,
+      concentrations,
+      split: splitOf(estimate, products),
+      ratios: ratiosOf(estimate, products),
+      budget: budgetOf(unmixing, sources, products),
+      fit: fitResult(unmixing, crude.wavelengthNm),
+      doubts,
+      notes: [...library.notes, ...(dilution.note ? [dilution.note] : [])],
+    },
+    curves: aliquotCurves(aliquot.id, crude, unmixing, settings),
+    estimate: { aliquot: aliquot.id, run, estimate, effects: commonEffects(sources), dilution },
+  };
+}
+
+/** Positions of the products among the species that are fitted. */
+function productPositions({ sheet, library }: PreparedSheet): number[] {
+  const products = new Set(productSpecies(sheet).map(({ id }) => id));
+  return library.standards.flatMap(({ species }: SpeciesStandard, k) =>
+    products.has(species) ? [k] : [],
+  );
+}
+
+function refusedAliquot(aliquot: SheetAliquot, error: unknown): RefusedPart {
+  if (!(error instanceof Refusal)) throw error;
+  const { code, message, mend } = error;
+  const { what: _, ...where } = error.where;
+  return {
+    what: `aliquot ${aliquot.id}`,
+    why: refusalSentence({ code, message, mend, where }),
+    line: where.line ?? null,
+    code,
+    mend,
+  };
 }

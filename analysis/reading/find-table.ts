@@ -19,7 +19,8 @@ export function findTable(lines: Lines): Table {
     cells: splitCells(lines.lines[index] ?? '', block.delimiter),
   }));
   const settled = settleDecimalSign(rows);
-  if (block.delimiter === 'comma') refuseCommaForBoth(rows, headings);
+  // A decimal comma found under a delimiting comma stood in quotes, which keeps the two apart.
+  if (block.delimiter === 'comma' && settled.decimal === 'point') refuseCommaForBoth(rows, headings);
   const lastRow = block.rows.at(-1) ?? 0;
   const surroundings = linesAround(lines.lines, headings.from, lastRow);
   return {

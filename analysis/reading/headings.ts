@@ -70,6 +70,7 @@ function* divisions(text: string, { delimiter, cells }: DataBlock): Generator<re
   }
   // A heading may be set with another delimiter than its data, but then it must fit exactly.
   const attempts = [
+    ...(text.includes('"') ? [splitCells(text, 'space')] : []),
     ...otherDelimiters.map((other) => splitCells(text, other)),
     text.trim().split(/ {2,}|\t+/),
     splitCells(text, 'space'),

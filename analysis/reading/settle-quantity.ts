@@ -51,23 +51,28 @@ export function settleQuantity(trace: RawTrace): SettledQuantity {
 interface Size {
   readonly lowest: number;
   readonly highest: number;
-  /** Median of the absolute values. */
-  readonly typical: number;
+  /** More than half of the values are beyond what a photometer measures as absorbance. */
+  readonly isMostlyBeyond: boolean;
 }
 
 function sizeOf(y: Float64Array): Size {
-  const solid = y.filter((value) => !Number.isNaN(value));
-  const absolute = solid.map(Math.abs).sort();
-  return {
-    lowest: solid.reduce((low, value) => Math.min(low, value), Number.POSITIVE_INFINITY),
-    highest: solid.reduce((high, value) => Math.max(high, value), Number.NEGATIVE_INFINITY),
-    typical: absolute[Math.floor(absolute.length / 2)] ?? 0,
-  };
+  let lowest = Number.POSITIVE_INFINITY;
+  let highest = Number.NEGATIVE_INFINITY;
+  let solid = 0;
+  let beyond = 0;
+  for (const value of y) {
+    if (Number.isNaN(value)) continue;
+    solid += 1;
+    if (value < lowest) lowest = value;
+    if (value > highest) highest = value;
+    if (Math.abs(value) > HIGHEST_ABSORBANCE) beyond += 1;
+  }
+  return { lowest, highest, isMostlyBeyond: beyond > solid / 2 };
 }
 
 function bySize(trace: RawTrace, quantity: Quantity, size: Size): SettledQuantity {
   const plain = { quantity, assumptions: [] };
-  if (quantity === 'absorbance' && size.typical > HIGHEST_ABSORBANCE) {
+  if (quantity === 'absorbance' && size.isMostlyBeyond) {
     throw refusal(
       trace,
       'implausible-values',

@@ -31,57 +31,60 @@ function split(line: string, delimiter: Delimiter): readonly string[] {
   return cells;
 }
 
-/** A cell is quoted only where the quote opens it and another closes it before the next delimiter. */
+/**
+ * A quote counts only where it opens a cell and its partner closes it. After the first one without
+ * a partner all quotes of the line are plain characters: one look ahead a line, not one a cell.
+ */
 function splitQuoted(line: string, sign: string): readonly string[] {
   const cells: string[] = [];
   let at = 0;
-  // Beyond the last quote of the line no cell is quoted: keeps an unclosed quote from costing a scan each.
-  const lastQuote = line.lastIndexOf('"');
+  let quotesCount = true;
   for (;;) {
     const opens = firstSolid(line, at, sign);
-    const quoted = opens < lastQuote && line[opens] === '"' ? readQuoted(line, opens, sign) : null;
-    if (quoted) {
+    const isQuote = quotesCount && line[opens] === '"';
+    const quoted = isQuote ? readQuoted(line, opens) : null;
+    const end = quoted ? firstSolid(line, quoted.end, sign) : 0;
+    if (quoted && (end >= line.length || line[end] === sign)) {
       cells.push(quoted.cell);
-      at = quoted.end;
+      at = end;
     } else {
-      const end = line.indexOf(sign, at);
-      cells.push(line.slice(at, end === -1 ? line.length : end).trim());
-      at = end === -1 ? line.length : end;
+      quotesCount &&= !isQuote;
+      const next = line.indexOf(sign, at);
+      const stop = next === -1 ? line.length : next;
+      cells.push(line.slice(at, stop).trim());
+      at = stop;
     }
     if (at >= line.length) return cells;
-    at += sign.length;
+    at += 1;
   }
 }
 
 function firstSolid(line: string, from: number, sign: string): number {
   let at = from;
-  while (at < line.length && line[at] !== sign && (line[at] === ' ' || line[at] === '\t')) at += 1;
+  while (at < line.length && line[at] !== sign && isSpace(line, at)) at += 1;
   return at;
 }
 
-/** `end` is where the delimiter after the quoted cell stands, or the end of the line. */
-function readQuoted(line: string, opens: number, sign: string) {
+const isSpace = (line: string, at: number) => line[at] === ' ' || line[at] === '\t';
+
+/** `end` is the place after the closing quote; null where none closes. */
+function readQuoted(line: string, opens: number): { cell: string; end: number } | null {
   let cell = '';
   let at = opens + 1;
   for (;;) {
     const closes = line.indexOf('"', at);
     if (closes === -1) return null;
     cell += line.slice(at, closes);
-    if (line[closes + 1] !== '"') {
-      const next = firstSolid(line, closes + 1, sign);
-      const ends = next >= line.length || line[next] === sign;
-      return ends ? { cell: cell.trim(), end: next } : null;
-    }
+    if (line[closes + 1] !== '"') return { cell: cell.trim(), end: closes + 1 };
     cell += '"';
     at = closes + 2;
   }
 }
 
 function splitAtSpaces(line: string): readonly string[] {
+  if (line.includes('"')) return splitQuotedAtSpaces(line);
+  const parts = line.trim().split(/\s+/);
   const cells: string[] = [];
-  const parts = line.includes('"')
-    ? (line.match(/"[^"]*"|[^\s"]+/g) ?? []).map((part) => part.replaceAll('"', ''))
-    : line.trim().split(/\s+/);
   let at = 0;
   let previousEnd = -1;
   for (const part of parts) {
@@ -89,8 +92,8 @@ function splitAtSpaces(line: string): readonly string[] {
     const start = line.indexOf(part, at);
     at = start + part.length;
     const last = cells.at(-1);
-    // Only lines with words pay for the look at letters: numbers begin with a digit or a sign.
-    const joins = last !== undefined && start === previousEnd + 1 && isWord(part) && isWord(last);
+    const joins =
+      last !== undefined && start === previousEnd + 1 && isWord(part) && isWord(last);
     if (joins) cells[cells.length - 1] = `${last} ${part}`;
     else cells.push(part);
     previousEnd = at;
@@ -98,8 +101,29 @@ function splitAtSpaces(line: string): readonly string[] {
   return cells;
 }
 
+function splitQuotedAtSpaces(line: string): readonly string[] {
+  const cells: string[] = [];
+  let at = 0;
+  let quotesCount = true;
+  for (;;) {
+    while (at < line.length && isSpace(line, at)) at += 1;
+    if (at >= line.length) return cells;
+    const isQuote = quotesCount && line[at] === '"';
+    const quoted = isQuote ? readQuoted(line, at) : null;
+    if (quoted && (quoted.end >= line.length || isSpace(line, quoted.end))) {
+      cells.push(quoted.cell);
+      at = quoted.end;
+      continue;
+    }
+    quotesCount &&= !isQuote;
+    const start = at;
+    while (at < line.length && !isSpace(line, at)) at += 1;
+    cells.push(line.slice(start, at));
+  }
+}
+
+/** Numbers begin with a digit or a sign, so that only words pay for the look at their letters. */
 function isWord(part: string): boolean {
-  const code = part.charCodeAt(0);
-  const isLetter = (code | 32) >= 97 && (code | 32) <= 122;
-  return isLetter && /^[a-z -]+$/i.test(part);
+  const code = part.charCodeAt(0) | 32;
+  return code >= 97 && code <= 122 && /^[a-z -]+$/i.test(part);
 }

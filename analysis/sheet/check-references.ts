@@ -106,16 +106,6 @@ function spectraFaults(sheet: Sheet): ReferenceFault | null {
       if (fault) return fault;
     }
   }
-  for (const [index, standard] of (sheet.standards ?? []).entries()) {
-    if (standard.kind !== 'molar-absorptivity' && standard.concentrationMolPerL === undefined) {
-      return {
-        code: 'concentration-missing',
-        message: `Standard "${standard.id}" has no concentration ("concentrationMolPerL").`,
-        path: ['standards', String(index)],
-        mend: 'Give its concentration, or mark it as "kind": "molar-absorptivity" if its spectrum already is in L mol⁻¹ cm⁻¹.',
-      };
-    }
-  }
   return null;
 }
 

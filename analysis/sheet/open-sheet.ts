@@ -12,6 +12,7 @@ export interface OpenedSheetText {
 }
 
 const largestSheetCharacters = 512 * 1024 * 1024;
+const deepestNesting = 100;
 
 /**
  * Reads and checks a sheet. Throws a `Refusal` that names the line, what is wrong and what would
@@ -63,6 +64,7 @@ function parseJson(source: string, file: string): Node {
       mend: 'Open another file, or begin a new sheet.',
     });
   }
+  refuseTooDeep(source, file);
   const errors: ParseError[] = [];
   const tree = parseTree(source, errors, { disallowComments: true, allowTrailingComma: false });
   const first = errors[0];
@@ -85,6 +87,28 @@ function parseJson(source: string, file: string): Node {
     });
   }
   return tree;
+}
+
+/** Nesting that no sheet needs would overflow the parser's stack. */
+function refuseTooDeep(source: string, file: string): void {
+  let depth = 0;
+  let inText = false;
+  for (let i = 0; i < source.length; i++) {
+    const code = source.charCodeAt(i);
+    if (inText) {
+      if (code === 0x5c) i++;
+      else if (code === 0x22) inText = false;
+    } else if (code === 0x22) inText = true;
+    else if (code === 0x5b || code === 0x7b) depth++;
+    else if (code === 0x5d || code === 0x7d) depth--;
+    if (depth <= deepestNesting) continue;
+    throw new Refusal({
+      code: 'sheet-too-deep',
+      message: `The document is nested more than ${deepestNesting} deep; a sheet is not.`,
+      where: { file, line: lineAt(source, i) },
+      mend: 'Open a file saved as *.sheet.json.',
+    });
+  }
 }
 
 function checkFormat(value: unknown, file: string): void {

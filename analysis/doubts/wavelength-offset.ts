@@ -1,0 +1,47 @@
+import { shiftSlope, standardsVariance } from '../unmixing/unmix.ts';
+import { weightedFit } from '../unmixing/weighted-fit.ts';
+import type { DoubtTest, Evidence } from './evidence.ts';
+import { twoFigures } from './wording.ts';
+
+/** Two-sided, false alarms below 1 in 1000 for white noise. */
+const limit = 3.3;
+/** An offset smaller than this does no harm that matters. nm */
+const smallestOfNote = 0.02;
+
+/**
+ * Score test of a wavelength offset between crude and standards: how far the slope of the model
+ * wants to come in, where the sheet holds the offset at none; where it is free, whether it is more
+ * than its uncertainty and an instrument's tolerance.
+ */
+export const wavelengthOffset: DoubtTest = (evidence) => {
+  const { settings } = evidence;
+  if (settings.shift === 'common') return [];
+  const { shiftNm, sd } = scoreOf(evidence);
+  if (!(Math.abs(shiftNm) > Math.max(limit * sd, smallestOfNote))) return [];
+  return [
+    {
+      code: 'wavelength-offset',
+      message:
+        `Crude and standards disagree in wavelength by about ${twoFigures(shiftNm)} nm (standard uncertainty ${twoFigures(sd)} nm). ` +
+        'An offset of 0.3 nm can move a ratio by several percent. ' +
+        'Let the fit find the offset (wavelength offset: common), and check the wavelength scale with a line source or a holmium standard.',
+    },
+  ];
+};
+
+function scoreOf({ crude, unmixing, standards }: Evidence): { shiftNm: number; sd: number } {
+  const { fit, at, pathLengthCm, molarAbsorptivity, noise, excess } = unmixing;
+  const sd = fit.variance.map(Math.sqrt);
+  const columns = fit.whitened.map((column) => column.map((value, i) => value * sd[i]!));
+  const slope = shiftSlope(molarAbsorptivity, at, pathLengthCm, fit.parameters);
+  const measured = Float64Array.from(at, (i) => crude.values[i]!);
+  const free = weightedFit([...columns, slope], measured, noise, (parameters) =>
+    standardsVariance(molarAbsorptivity, at, pathLengthCm, parameters),
+  );
+  const gain = free.gain.at(-1);
+  if (!gain || standards.length === 0) return { shiftNm: 0, sd: Number.POSITIVE_INFINITY };
+  const variance = gain.reduce((sum, value, i) => sum + value * value * free.variance[i]!, 0);
+  const lack =
+    unmixing.df === Number.POSITIVE_INFINITY ? 1 : Math.min(excess, free.reducedChiSquare);
+  return { shiftNm: free.parameters.at(-1) ?? 0, sd: Math.sqrt(variance * Math.max(lack, 1)) };
+}

@@ -1,0 +1,62 @@
+import type { AmountEvidence } from '../doubts/evidence.ts';
+import type { BaselineName } from '../unmixing/design.ts';
+import { commonCovariance, type ErrorSources, ownCovariance } from '../unmixing/error-sources.ts';
+import type { Unmixing } from '../unmixing/unmix.ts';
+import type { AmountEstimate } from './amounts.ts';
+import { studentFactor } from './confidence-set.ts';
+import type { ConcentrationResult, FitResult, Quantified } from './results.ts';
+
+/** The amounts of one aliquot with their uncertainty in its two parts. */
+export function estimateOf(unmixing: Unmixing, sources: ErrorSources): AmountEstimate {
+  const selfScale = new Float64Array(unmixing.species.length);
+  for (const { effect } of sources.scale) {
+    for (const [k, change] of effect.entries()) {
+      const amount = unmixing.amounts[k]!;
+      if (amount > 0) selfScale[k]! += (change / amount) ** 2;
+    }
+  }
+  return {
+    species: unmixing.species,
+    amounts: unmixing.amounts,
+    drawn: unmixing.drawn,
+    own: ownCovariance(sources),
+    common: commonCovariance(sources),
+    selfScale,
+    df: unmixing.df,
+  };
+}
+
+/** What the doubts may know of the amounts. */
+export function amountEvidence(concentrations: readonly ConcentrationResult[]): AmountEvidence[] {
+  return concentrations.map(({ detected, cuvetteMolPerL }) => ({
+    detected,
+    standardUncertainty: cuvetteMolPerL.standardUncertainty ?? Number.POSITIVE_INFINITY,
+    upper: cuvetteMolPerL.interval95[1],
+  }));
+}
+
+/** The figures of the fit. */
+export function fitResult(unmixing: Unmixing, wavelengthNm: Float64Array): FitResult {
+  const { at, fit, noise, noiseFrom, baseline, shiftNm, reducedChiSquare, df } = unmixing;
+  const squares = fit.residual.reduce((sum, value) => sum + value * value, 0);
+  return {
+    points: at.length,
+    windowNm: [wavelengthNm[at[0] ?? 0] ?? 0, wavelengthNm[at.at(-1) ?? 0] ?? 0],
+    residualRms: Math.sqrt(squares / at.length),
+    reducedChiSquare:
+      reducedChiSquare !== null && Number.isFinite(reducedChiSquare) ? reducedChiSquare : null,
+    shiftNm: symmetric(shiftNm.value, shiftNm.sd, df),
+    baseline: baseline.map(
+      ({ term, value, sd }): { term: BaselineName; absorbance: Quantified } => ({
+        term,
+        absorbance: symmetric(value, sd, df),
+      }),
+    ),
+    noise: { ...noise, from: noiseFrom },
+  };
+}
+
+function symmetric(value: number, sd: number, df: number): Quantified {
+  const half = studentFactor(df) * 1.959963984540054 * sd;
+  return { value, standardUncertainty: sd, interval95: [value - half, value + half] };
+}

@@ -1,0 +1,98 @@
+import type { Reading } from '../reading/reading.ts';
+import { resolveSpectrum } from '../reading/resolve-spectrum.ts';
+import { Refusal } from '../refusal.ts';
+import { absorbingSpecies, type FitSettings, speciesName } from '../sheet/defaults.ts';
+import type { Sheet, SheetStandard } from '../sheet/schema.ts';
+import { type Solution, solutionOf } from './solution.ts';
+import { combineSolutions, type SpeciesStandard } from './species-standard.ts';
+
+/** The standards of a sheet, one entry for each absorbing species, in the order of the species. */
+export interface StandardsLibrary {
+  readonly standards: readonly SpeciesStandard[];
+  /** Uncertainties that the sheet leaves out, in words. */
+  readonly notGiven: readonly string[];
+  /** What was left open and how it was taken, in words. */
+  readonly notes: readonly string[];
+}
+
+/** Reads and combines all standards. Throws a `Refusal` where one is missing or cannot be used. */
+export function standardsLibrary(
+  sheet: Sheet,
+  readings: ReadonlyMap<string, Reading>,
+  settings: FitSettings,
+): StandardsLibrary {
+  const absorbing = absorbingSpecies(sheet);
+  if (absorbing.length === 0) {
+    throw new Refusal({
+      code: 'nothing-absorbs',
+      message: 'No species of the sheet absorbs.',
+      mend: 'Say which species absorb, and give standards of them.',
+    });
+  }
+  const bySpecies = absorbing.map(({ id }) => ({
+    id,
+    standards: (sheet.standards ?? []).filter(({ species }) => species === id),
+  }));
+  const missing = bySpecies.filter(({ standards }) => standards.length === 0);
+  if (missing.length > 0) {
+    const names = missing.map(({ id }) => speciesName(sheet, id)).join(', ');
+    throw new Refusal({
+      code: 'standard-missing',
+      message: `There is no standard of ${names}.`,
+      mend: 'Load a spectrum of a solution of known concentration, or mark the species as not absorbing.',
+    });
+  }
+  return {
+    standards: bySpecies.map(({ standards }) =>
+      combineSolutions(
+        standards.map((standard) => readSolution(sheet, standard, readings, settings)),
+      ),
+    ),
+    notGiven: notGiven(sheet),
+    notes: [],
+  };
+}
+
+function readSolution(
+  sheet: Sheet,
+  standard: SheetStandard,
+  readings: ReadonlyMap<string, Reading>,
+  settings: FitSettings,
+): Solution {
+  const owner = `standard ${standard.id}`;
+  const kind = standard.kind ?? 'solution';
+  if (kind === 'solution' && standard.concentrationMolPerL === undefined) {
+    throw new Refusal({
+      code: 'concentration-missing',
+      message: 'The concentration is not given.',
+      where: { what: owner },
+      mend: 'Type the concentration of the solution ("concentrationMolPerL"), or set the kind to "molar-absorptivity" if the spectrum already is in L mol⁻¹ cm⁻¹.',
+    });
+  }
+  const wanted = kind === 'solution' ? 'absorbance' : 'molar-absorptivity';
+  const spectrum = resolveSpectrum(standard.spectrum, readings, wanted, owner);
+  const solution = solutionOf(sheet, standard, spectrum, settings);
+  if (!solution.usable.some((usable) => usable === 1)) {
+    throw new Refusal({
+      code: 'standard-empty',
+      message: `No point of the spectrum can be used: all are missing or above an absorbance of ${settings.upperAbsorbance}.`,
+      where: { what: owner },
+      mend: 'Dilute the standard and record it again.',
+    });
+  }
+  return solution;
+}
+
+function notGiven(sheet: Sheet): string[] {
+  const absorbing = new Set(absorbingSpecies(sheet).map(({ id }) => id));
+  const used = (sheet.standards ?? []).filter(({ species }) => absorbing.has(species));
+  const stocks = new Set(used.map(({ stock }) => stock));
+  return [
+    ...(sheet.stocks ?? [])
+      .filter(({ id, relativeStandardUncertainty: u }) => stocks.has(id) && u === undefined)
+      .map(({ id }) => `the stock ${id}`),
+    ...used
+      .filter(({ relativeStandardUncertainty }) => relativeStandardUncertainty === undefined)
+      .map(({ id }) => `the standard ${id}`),
+  ];
+}

@@ -1,0 +1,84 @@
+import {
+  type Interpolation,
+  interpolated,
+  interpolatedSlope,
+  interpolation,
+  stencil,
+} from '../spectrum/interpolate.ts';
+import type { SpeciesStandard } from './species-standard.ts';
+
+/** ε of one species on a target grid, with what is needed to carry the standards' noise through a fit. */
+export interface MolarAbsorptivity {
+  readonly species: string;
+  /** L mol⁻¹ cm⁻¹; NaN where no solution covers the point. */
+  readonly epsilon: Float64Array;
+  /** dε/dλ, per nm. */
+  readonly slope: Float64Array;
+  /** Standard deviation of the point noise of `epsilon`. */
+  readonly sd: Float64Array;
+  readonly parts: readonly SolutionPart[];
+}
+
+interface SolutionPart {
+  readonly map: Interpolation;
+  /** Share of this solution in ε at each target point, times its factor. */
+  readonly share: Float64Array;
+  /** Noise of the solution's own points, L mol⁻¹ cm⁻¹. */
+  readonly sd: Float64Array;
+}
+
+/**
+ * Brings the standards of one species to the target wavelengths and joins them point by point,
+ * each weighted by its noise there; never extrapolates.
+ */
+export function molarAbsorptivityAt(
+  standard: SpeciesStandard,
+  targetNm: Float64Array,
+): MolarAbsorptivity {
+  const points = targetNm.length;
+  const epsilon = new Float64Array(points);
+  const slope = new Float64Array(points);
+  const sd = new Float64Array(points);
+  const total = new Float64Array(points);
+  const found = standard.solutions.map((solution, s) => {
+    const map = interpolation(solution.wavelengthNm, solution.usable, targetNm);
+    const factor = standard.factors[s]!;
+    const noise = interpolatedSd(map, solution.sd);
+    const share = new Float64Array(points);
+    for (let i = 0; i < points; i++) {
+      if (map.covered[i] === 0) continue;
+      share[i] = 1 / (factor * factor * noise[i]! * noise[i]!);
+      total[i]! += share[i]!;
+    }
+    return { solution, map, factor, share, noise };
+  });
+  for (const { solution, map, factor, share, noise } of found) {
+    const value = interpolated(map, solution.epsilon);
+    const derivative = interpolatedSlope(map, solution.epsilon);
+    for (let i = 0; i < points; i++) {
+      if (map.covered[i] === 0) continue;
+      share[i] = (share[i]! / total[i]!) * factor;
+      epsilon[i]! += share[i]! * value[i]!;
+      slope[i]! += share[i]! * derivative[i]!;
+      sd[i]! += (share[i]! * noise[i]!) ** 2;
+    }
+  }
+  for (let i = 0; i < points; i++) {
+    sd[i] = Math.sqrt(sd[i]!);
+    if (total[i] === 0) epsilon[i] = Number.NaN;
+  }
+  const parts = found.map(({ map, share, solution }) => ({ map, share, sd: solution.sd }));
+  return { species: standard.species, epsilon, slope, sd, parts };
+}
+
+function interpolatedSd(map: Interpolation, sd: Float64Array): Float64Array {
+  const out = new Float64Array(map.points);
+  for (let i = 0; i < map.points; i++) {
+    let variance = 0;
+    for (let k = i * stencil; k < (i + 1) * stencil; k++) {
+      variance += (map.weight[k]! * sd[map.index[k]!]!) ** 2;
+    }
+    out[i] = Math.sqrt(variance);
+  }
+  return out;
+}

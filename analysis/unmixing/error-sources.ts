@@ -1,0 +1,159 @@
+import { stencil } from '../spectrum/interpolate.ts';
+import type { MolarAbsorptivity } from '../standards/molar-absorptivity.ts';
+import type { SpeciesStandard } from '../standards/species-standard.ts';
+import type { Unmixing } from './unmix.ts';
+
+/**
+ * What makes the amounts of one aliquot uncertain, source by source. Effects are changes of the
+ * amounts (mol/L, one entry a species) per standard deviation of the source; sources that two
+ * aliquots share (all but `points`) stand in the same order in both, so that they cancel where
+ * the aliquots are compared. GUM (JCGM 100), 5.2: correlated inputs.
+ */
+export interface ErrorSources {
+  /** Covariance of the amounts from photometric noise and lack of fit, species × species, (mol/L)². */
+  readonly points: readonly Float64Array[];
+  /** The same from directions that the data do not see; all zero as a rule. */
+  readonly unseen: readonly Float64Array[];
+  readonly scale: readonly { readonly source: string; readonly effect: Float64Array }[];
+  /** Point noise of each standard's spectrum: species rows × its points. */
+  readonly standardsNoise: readonly {
+    readonly standard: string;
+    readonly effects: readonly Float64Array[];
+  }[];
+}
+
+export function errorSources(
+  unmixing: Unmixing,
+  standards: readonly SpeciesStandard[],
+): ErrorSources {
+  const { amounts, fit, excess } = unmixing;
+  const size = amounts.length;
+  return {
+    points: pointCovariance(fit.gain.slice(0, size), fit.noiseVariance, excess),
+    unseen: unseenCovariance(unmixing),
+    scale: standards.flatMap(({ scaleErrors }, k) =>
+      scaleErrors.map(({ source, relative }) => {
+        const effect = new Float64Array(size);
+        effect[k] = -relative * Math.max(amounts[k]!, 0);
+        return { source, effect };
+      }),
+    ),
+    standardsNoise: standards.flatMap((standard, k) =>
+      standard.solutions.map((solution, s) => ({
+        standard: solution.standard,
+        effects: standardNoiseEffects(unmixing, k, s),
+      })),
+    ),
+  };
+}
+
+/** gain · diag(variance) · gainᵀ · factor. */
+export function pointCovariance(
+  gain: readonly Float64Array[],
+  variance: Float64Array,
+  factor: number,
+): Float64Array[] {
+  return gain.map((a) =>
+    Float64Array.from(gain, (b) => {
+      let sum = 0;
+      for (const [i, value] of variance.entries()) sum += a[i]! * b[i]! * value;
+      return factor * sum;
+    }),
+  );
+}
+
+/** Covariance of the amounts from everything together. */
+export function totalCovariance(sources: ErrorSources): Float64Array[] {
+  return sumOf([ownCovariance(sources), commonCovariance(sources)]);
+}
+
+/** What an aliquot has for itself: noise, lack of fit, and what the data do not see. */
+export function ownCovariance({ points, unseen }: ErrorSources): Float64Array[] {
+  return sumOf([points, unseen]);
+}
+
+/** What all aliquots share: the standards' scales and their noise. */
+export function commonCovariance(sources: ErrorSources): Float64Array[] {
+  const rows = commonEffects(sources);
+  return rows.map((a) =>
+    Float64Array.from(rows, (b) => a.reduce((sum, value, i) => sum + value * b[i]!, 0)),
+  );
+}
+
+/** Effects of all shared sources side by side: species rows × sources, per standard deviation. */
+export function commonEffects({ points, scale, standardsNoise }: ErrorSources): Float64Array[] {
+  return points.map((_, k) => {
+    const parts = standardsNoise.map(({ effects }) => effects[k] ?? new Float64Array());
+    const length = parts.reduce((sum, part) => sum + part.length, scale.length);
+    const row = new Float64Array(length);
+    let at = 0;
+    for (const { effect } of scale) row[at++] = effect[k]!;
+    for (const part of parts) {
+      row.set(part, at);
+      at += part.length;
+    }
+    return row;
+  });
+}
+
+function standardNoiseEffects(
+  unmixing: Unmixing,
+  species: number,
+  solution: number,
+): Float64Array[] {
+  const { fit, at, amounts, pathLengthCm, molarAbsorptivity } = unmixing;
+  const part = partOf(molarAbsorptivity, species, solution);
+  const strength = -pathLengthCm * Math.max(amounts[species]!, 0);
+  return fit.gain.slice(0, amounts.length).map((gain) => {
+    const effect = new Float64Array(part.sd.length);
+    for (const [j, i] of at.entries()) {
+      const share = part.share[i]!;
+      if (share === 0) continue;
+      const size = strength * gain[j]! * share;
+      for (let m = i * stencil; m < (i + 1) * stencil; m++) {
+        effect[part.map.index[m]!]! += size * part.map.weight[m]!;
+      }
+    }
+    return effect.map((value, j) => value * part.sd[j]!);
+  });
+}
+
+function partOf(
+  molarAbsorptivity: readonly MolarAbsorptivity[],
+  species: number,
+  solution: number,
+): MolarAbsorptivity['parts'][number] {
+  const part = molarAbsorptivity[species]?.parts[solution];
+  if (!part) throw new Error(`no solution ${solution} of species ${species}`);
+  return part;
+}
+
+/**
+ * A direction that the data do not see leaves the amounts along it open to anything that keeps
+ * them non-negative: its standard deviation is taken as all that the species in it hold together.
+ */
+function unseenCovariance({ fit, amounts, drawn }: Unmixing): Float64Array[] {
+  const covariance = Array.from(amounts, () => new Float64Array(amounts.length));
+  for (const direction of fit.unseen) {
+    let largest = 0;
+    let held = 0;
+    for (const k of amounts.keys()) {
+      largest = Math.max(largest, Math.abs(direction[k]!));
+      if (direction[k] !== 0) held += Math.abs(drawn[k]!);
+    }
+    if (largest === 0) continue;
+    for (const [k, row] of covariance.entries()) {
+      for (const l of row.keys()) {
+        row[l]! += direction[k]! * direction[l]! * (held / largest) ** 2;
+      }
+    }
+  }
+  return covariance;
+}
+
+function sumOf(matrices: readonly (readonly Float64Array[])[]): Float64Array[] {
+  const [first = [], ...rest] = matrices;
+  return first.map((row, k) =>
+    row.map((value, l) => rest.reduce((sum, matrix) => sum + matrix[k]![l]!, value)),
+  );
+}

@@ -1,0 +1,31 @@
+import { randomUUID } from 'node:crypto';
+import { open, rename, rm } from 'node:fs/promises';
+import path from 'node:path';
+import { Refusal } from '../../analysis/index.ts';
+
+/**
+ * Writes a file so that it is there whole or not at all: a temporary file beside it, flushed to
+ * the disk, then renamed over it. Throws a `Refusal` where the place cannot be written.
+ */
+export async function writeWhole(file: string, text: string): Promise<void> {
+  const temporary = path.join(path.dirname(file), `.${path.basename(file)}.${randomUUID()}.part`);
+  try {
+    const handle = await open(temporary, 'wx');
+    try {
+      await handle.writeFile(text, 'utf8');
+      await handle.sync();
+    } finally {
+      await handle.close();
+    }
+    await rename(temporary, file);
+  } catch (error) {
+    await rm(temporary, { force: true });
+    const reason = error instanceof Error && 'code' in error ? ` (${String(error.code)})` : '';
+    throw new Refusal({
+      code: 'cannot-write',
+      message: `The file cannot be written there${reason}; what was there before is untouched.`,
+      where: { file },
+      mend: 'Choose a folder that exists and that you may write to.',
+    });
+  }
+}
