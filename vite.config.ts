@@ -1,0 +1,23 @@
+import path from 'node:path';
+import { defineConfig } from 'vite';
+
+const root = import.meta.dirname;
+
+/** The screen: renderer/ -> dist/renderer, with nothing inlined so that the policy can stay strict. */
+export default defineConfig({
+  root: path.join(root, 'renderer'),
+  base: './',
+  oxc: { jsx: { runtime: 'automatic', importSource: 'preact' } },
+  worker: { format: 'es' },
+  assetsInclude: ['**/*.csv', '**/*.txt', '**/*.tsv', '**/*.dat', '**/*.asc', '**/*.sheet.json'],
+  server: { fs: { allow: [root] } },
+  build: {
+    outDir: path.join(root, 'dist/renderer'),
+    emptyOutDir: true,
+    assetsInlineLimit: 0,
+    modulePreload: { polyfill: false },
+    target: 'chrome130',
+    // nearly all of it is plotly, loaded after first paint
+    chunkSizeWarningLimit: 6000,
+  },
+});
