@@ -3,11 +3,22 @@ export { type Doubt, type DoubtCode, doubtCodes } from './doubts/doubt.ts';
 export { programName } from './program.ts';
 export { type PreparedSheet, prepare, quantify, quantifyAliquot } from './quantify.ts';
 export { embeddedFrom } from './reading/embedded.ts';
-export { readExport, tooLarge } from './reading/read-export.ts';
+export { readExport } from './reading/read-export.ts';
 export type { Quantity, Reading, ReadSpectrum, RefusedPart } from './reading/reading.ts';
 export { readingToJson } from './reading/reading-to-json.ts';
 export { type SheetSource, sheetSources } from './reading/sheet-sources.ts';
+export { tooLargeReading } from './reading/too-large.ts';
 export { Refusal, type RefusalText, refusalSentence, type Where } from './refusal.ts';
+export {
+  figuresText,
+  numberText,
+  type QuantifiedText,
+  quantifiedText,
+  type ReadingUnit,
+} from './report/numbers.ts';
+export { reportCsv } from './report/report-csv.ts';
+export { type ReportOptions, reportHtml } from './report/report-html.ts';
+export { resultsJson } from './report/results-json.ts';
 export { absorbingSpecies, fitSettings, productSpecies, speciesName } from './sheet/defaults.ts';
 export { newSheet } from './sheet/new-sheet.ts';
 export { type OpenedSheetText, openSheet } from './sheet/open-sheet.ts';

@@ -8,6 +8,7 @@ const limit = 3.8;
 /** Widths of the bands looked for, standard deviation in nm. */
 const widthsNm = [4, 8, 15, 25] as const;
 const smallestSample = 20;
+const farInWidths = 4;
 const blockPoints = 8;
 const fewestBlocks = 8;
 /** Scale of a normal sample from its median absolute value: 1 / Φ⁻¹(3/4). */
@@ -36,7 +37,7 @@ export const unexplainedBand: DoubtTest = (evidence) => {
   ];
 };
 
-interface Band {
+export interface Band {
   readonly nm: number;
   readonly widthNm: number;
   readonly z: number;
@@ -46,54 +47,77 @@ interface Band {
   readonly highest: number;
 }
 
-function strongestBand(evidence: Evidence): Band | null {
-  const { crude, unmixing } = evidence;
+/** The band that stands out most from the residual; null where there are too few points to look. */
+export function strongestBand({ crude, unmixing, settings }: Evidence): Band | null {
   const { at, fit } = unmixing;
   if (at.length < smallestSample || unmixing.reducedChiSquare === null) return null;
   const nm = Float64Array.from(at, (i) => crude.wavelengthNm[i]!);
   const sd = fit.variance.map(Math.sqrt);
-  const residual = fit.residual.map((value, i) => value / sd[i]!);
-  const away = awayFromModel(evidence, sd);
-  const clean = away(residual);
-  const inflation = Math.sqrt(correlationLength(clean));
+  const basis = modelBasis(unmixing, settings.shift, sd);
+  const residual = projectedOut(
+    basis,
+    fit.residual.map((value, i) => value / sd[i]!),
+  );
+  const inflation = Math.sqrt(correlationLength(residual));
+  const [lowest, highest] = [nm[0]!, nm[nm.length - 1]!];
+  const step = (highest - lowest) / (nm.length - 1);
   let best: Band | null = null;
-  const step = ((nm.at(-1) ?? 0) - (nm[0] ?? 0)) / (nm.length - 1);
   for (const widthNm of widthsNm) {
     const stride = Math.max(1, Math.round(widthNm / 4 / step));
-    for (const [centre, place] of nm.entries()) {
-      if (centre % stride !== 0) continue;
-      const band = away(nm.map((x, i) => Math.exp(-0.5 * ((x - place) / widthNm) ** 2) / sd[i]!));
-      const norm = band.reduce((sum, value) => sum + value * value, 0);
-      if (!(norm > 1e-12)) continue;
-      const match = band.reduce((sum, value, i) => sum + value * clean[i]!, 0);
-      const z = match / Math.sqrt(norm) / inflation;
+    for (let centre = 0; centre < nm.length; centre += stride) {
+      const { match, squares } = matched({ nm, sd, residual, basis }, nm[centre]!, widthNm);
+      if (!(squares > 1e-12)) continue;
+      const z = match / Math.sqrt(squares) / inflation;
       if (best && Math.abs(z) <= Math.abs(best.z)) continue;
-      best = { nm: place, widthNm, z, height: match / norm, lowest: nm[0]!, highest: nm.at(-1)! };
+      best = { nm: nm[centre]!, widthNm, z, height: match / squares, lowest, highest };
     }
   }
   return best;
 }
 
-/** Takes out of a whitened vector what the model and a wavelength offset could have made. */
-function awayFromModel(
-  { unmixing, settings }: Evidence,
-  sd: Float64Array,
-): (vector: Float64Array) => Float64Array {
-  const { fit, at, molarAbsorptivity, pathLengthCm } = unmixing;
-  const columns = [...fit.whitened];
-  if (settings.shift === 'none') {
-    const slope = shiftSlope(molarAbsorptivity, at, pathLengthCm, fit.parameters);
-    columns.push(slope.map((value, i) => value / sd[i]!));
+interface Scan {
+  readonly nm: Float64Array;
+  readonly sd: Float64Array;
+  /** Whitened, with the model taken out. */
+  readonly residual: Float64Array;
+  /** Orthonormal basis of what the model can make. */
+  readonly basis: readonly Float64Array[];
+}
+
+/**
+ * Inner product of a whitened Gaussian band with the residual, and the squared norm of the band
+ * with the model taken out: |b|² - Σ (b·q)². (The residual has the model taken out already.)
+ */
+function matched(
+  { nm, sd, residual, basis }: Scan,
+  place: number,
+  widthNm: number,
+): { match: number; squares: number } {
+  const along = new Float64Array(basis.length);
+  let match = 0;
+  let squares = 0;
+  for (let i = 0; i < nm.length; i++) {
+    const distance = (nm[i]! - place) / widthNm;
+    if (distance < -farInWidths) continue;
+    if (distance > farInWidths) break;
+    const value = Math.exp(-0.5 * distance * distance) / sd[i]!;
+    match += value * residual[i]!;
+    squares += value * value;
+    for (let m = 0; m < basis.length; m++) along[m]! += value * basis[m]![i]!;
   }
-  const basis = orthonormal(columns);
-  return (vector) => {
-    const out = vector.slice();
-    for (const direction of basis) {
-      const along = direction.reduce((sum, value, i) => sum + value * vector[i]!, 0);
-      for (let i = 0; i < out.length; i++) out[i]! -= along * direction[i]!;
-    }
-    return out;
-  };
+  for (const value of along) squares -= value * value;
+  return { match, squares };
+}
+
+/** The whitened model with the slope of a wavelength offset beside it (else an offset passes for bands). */
+function modelBasis(
+  { fit, at, molarAbsorptivity, pathLengthCm }: Evidence['unmixing'],
+  shift: Evidence['settings']['shift'],
+  sd: Float64Array,
+): Float64Array[] {
+  if (shift === 'common') return orthonormal(fit.whitened);
+  const slope = shiftSlope(molarAbsorptivity, at, pathLengthCm, fit.parameters);
+  return orthonormal([...fit.whitened, slope.map((value, i) => value / sd[i]!)]);
 }
 
 /** Orthonormal basis of the columns' span by Gram-Schmidt, done twice (enough for these few). */
@@ -101,17 +125,21 @@ function orthonormal(columns: readonly Float64Array[]): Float64Array[] {
   const basis: Float64Array[] = [];
   for (const column of columns) {
     const start = norm(column);
-    const rest = column.slice();
-    for (let pass = 0; pass < 2; pass++) {
-      for (const direction of basis) {
-        const along = direction.reduce((sum, value, i) => sum + value * rest[i]!, 0);
-        for (let i = 0; i < rest.length; i++) rest[i]! -= along * direction[i]!;
-      }
-    }
+    const rest = projectedOut(basis, projectedOut(basis, column));
     const length = norm(rest);
     if (length > 1e-10 * start) basis.push(rest.map((value) => value / length));
   }
   return basis;
+}
+
+function projectedOut(basis: readonly Float64Array[], vector: Float64Array): Float64Array {
+  const out = vector.slice();
+  for (const direction of basis) {
+    let along = 0;
+    for (let i = 0; i < out.length; i++) along += direction[i]! * vector[i]!;
+    for (let i = 0; i < out.length; i++) out[i]! -= along * direction[i]!;
+  }
+  return out;
 }
 
 function norm(vector: Float64Array): number {

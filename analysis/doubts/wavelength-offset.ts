@@ -1,6 +1,7 @@
 import { shiftSlope, standardsVariance } from '../unmixing/unmix.ts';
 import { weightedFit } from '../unmixing/weighted-fit.ts';
 import type { DoubtTest, Evidence } from './evidence.ts';
+import { strongestBand } from './unexplained-band.ts';
 import { twoFigures } from './wording.ts';
 
 /** Two-sided, false alarms below 1 in 1000 for white noise. */
@@ -16,8 +17,11 @@ const smallestOfNote = 0.02;
 export const wavelengthOffset: DoubtTest = (evidence) => {
   const { settings } = evidence;
   if (settings.shift === 'common') return [];
-  const { shiftNm, sd } = scoreOf(evidence);
+  const { shiftNm, sd, z } = scoreOf(evidence);
   if (!(Math.abs(shiftNm) > Math.max(limit * sd, smallestOfNote))) return [];
+  // a missing species leans on the slope too: where a band explains more, it is the band
+  const band = strongestBand(evidence);
+  if (band && Math.abs(band.z) > Math.abs(z)) return [];
   return [
     {
       code: 'wavelength-offset',
@@ -29,7 +33,15 @@ export const wavelengthOffset: DoubtTest = (evidence) => {
   ];
 };
 
-function scoreOf({ crude, unmixing, standards }: Evidence): { shiftNm: number; sd: number } {
+interface Score {
+  readonly shiftNm: number;
+  /** With lack of fit. */
+  readonly sd: number;
+  /** Against the noise alone, as a band's z is. */
+  readonly z: number;
+}
+
+function scoreOf({ crude, unmixing }: Evidence): Score {
   const { fit, at, pathLengthCm, molarAbsorptivity, noise, excess } = unmixing;
   const sd = fit.variance.map(Math.sqrt);
   const columns = fit.whitened.map((column) => column.map((value, i) => value * sd[i]!));
@@ -38,10 +50,10 @@ function scoreOf({ crude, unmixing, standards }: Evidence): { shiftNm: number; s
   const free = weightedFit([...columns, slope], measured, noise, (parameters) =>
     standardsVariance(molarAbsorptivity, at, pathLengthCm, parameters),
   );
-  const gain = free.gain.at(-1);
-  if (!gain || standards.length === 0) return { shiftNm: 0, sd: Number.POSITIVE_INFINITY };
+  const gain = free.gain.at(-1) ?? new Float64Array();
+  const shiftNm = free.parameters.at(-1) ?? 0;
   const variance = gain.reduce((sum, value, i) => sum + value * value * free.variance[i]!, 0);
   const lack =
     unmixing.df === Number.POSITIVE_INFINITY ? 1 : Math.min(excess, free.reducedChiSquare);
-  return { shiftNm: free.parameters.at(-1) ?? 0, sd: Math.sqrt(variance * Math.max(lack, 1)) };
+  return { shiftNm, sd: Math.sqrt(variance * Math.max(lack, 1)), z: shiftNm / Math.sqrt(variance) };
 }

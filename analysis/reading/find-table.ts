@@ -20,7 +20,8 @@ export function findTable(lines: Lines): Table {
   }));
   const settled = settleDecimalSign(rows);
   // A decimal comma found under a delimiting comma stood in quotes, which keeps the two apart.
-  if (block.delimiter === 'comma' && settled.decimal === 'point') refuseCommaForBoth(rows, headings);
+  if (block.delimiter === 'comma' && settled.decimal === 'point')
+    refuseCommaForBoth(rows, headings);
   const lastRow = block.rows.at(-1) ?? 0;
   const surroundings = linesAround(lines.lines, headings.from, lastRow);
   return {

@@ -4,13 +4,13 @@ import { decodeText } from './decode-text.ts';
 import { findTable } from './find-table.ts';
 import type { RawTrace, TracesFound } from './layouts/layout.ts';
 import { layouts } from './layouts/registered.ts';
-import { MAX_EXPORT_BYTES } from './limits.ts';
 import { recogniseOtherText } from './not-an-export.ts';
 import { recogniseBinary } from './not-text.ts';
 import type { Reading, ReadSpectrum, RefusedPart } from './reading.ts';
 import { spectrumOfTrace } from './spectrum-of-trace.ts';
 import { splitLines } from './split-lines.ts';
 import type { Table } from './table.ts';
+import { tooLargeReading } from './too-large.ts';
 
 /**
  * Reads one export: bytes -> text -> lines -> table -> layout -> spectra. Never throws for what a
@@ -19,9 +19,9 @@ import type { Table } from './table.ts';
  * above `MAX_EXPORT_BYTES`, of which not one byte is looked at.
  */
 export function readExport(bytes: Uint8Array, file: string): Reading {
-  const known = { file, sha256: '', encoding: '' };
-  if (bytes.length > MAX_EXPORT_BYTES) return refusedWhole(known, tooLarge(bytes.length));
-  known.sha256 = hex(sha256(bytes));
+  const refused = tooLargeReading(bytes.length, file);
+  if (refused) return refused;
+  const known = { file, sha256: hex(sha256(bytes)), encoding: '' };
   try {
     return readBytes(bytes, known);
   } catch (error) {
@@ -135,15 +135,6 @@ const noTraces: RefusalText = {
   message: 'The file has a wavelength column, but no column of values beside it.',
   mend: 'Export the spectrum with its values beside the wavelengths.',
 };
-
-function tooLarge(length: number): RefusalText {
-  const mebibytes = (size: number) => Math.round(size / 1024 / 1024);
-  return {
-    code: 'too-large',
-    message: `The file has ${mebibytes(length)} MiB; more than ${mebibytes(MAX_EXPORT_BYTES)} MiB are not read.`,
-    mend: 'Export fewer spectra a file, or split the file.',
-  };
-}
 
 function hex(bytes: Uint8Array): string {
   return Array.from(bytes, (byte) => byte.toString(16).padStart(2, '0')).join('');

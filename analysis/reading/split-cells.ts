@@ -41,7 +41,7 @@ function splitQuoted(line: string, sign: string): readonly string[] {
   let quotesCount = true;
   for (;;) {
     const opens = firstSolid(line, at, sign);
-    const isQuote = quotesCount && line[opens] === '"';
+    const isQuote: boolean = quotesCount && line[opens] === '"';
     const quoted = isQuote ? readQuoted(line, opens) : null;
     const end = quoted ? firstSolid(line, quoted.end, sign) : 0;
     if (quoted && (end >= line.length || line[end] === sign)) {
@@ -92,8 +92,7 @@ function splitAtSpaces(line: string): readonly string[] {
     const start = line.indexOf(part, at);
     at = start + part.length;
     const last = cells.at(-1);
-    const joins =
-      last !== undefined && start === previousEnd + 1 && isWord(part) && isWord(last);
+    const joins = last !== undefined && start === previousEnd + 1 && isWord(part) && isWord(last);
     if (joins) cells[cells.length - 1] = `${last} ${part}`;
     else cells.push(part);
     previousEnd = at;
@@ -108,7 +107,7 @@ function splitQuotedAtSpaces(line: string): readonly string[] {
   for (;;) {
     while (at < line.length && isSpace(line, at)) at += 1;
     if (at >= line.length) return cells;
-    const isQuote = quotesCount && line[at] === '"';
+    const isQuote: boolean = quotesCount && line[at] === '"';
     const quoted = isQuote ? readQuoted(line, at) : null;
     if (quoted && (quoted.end >= line.length || isSpace(line, quoted.end))) {
       cells.push(quoted.cell);

@@ -56,7 +56,7 @@ export function pointCovariance(
   return gain.map((a) =>
     Float64Array.from(gain, (b) => {
       let sum = 0;
-      for (const [i, value] of variance.entries()) sum += a[i]! * b[i]! * value;
+      for (let i = 0; i < variance.length; i++) sum += a[i]! * b[i]! * variance[i]!;
       return factor * sum;
     }),
   );
@@ -76,7 +76,11 @@ export function ownCovariance({ points, unseen }: ErrorSources): Float64Array[] 
 export function commonCovariance(sources: ErrorSources): Float64Array[] {
   const rows = commonEffects(sources);
   return rows.map((a) =>
-    Float64Array.from(rows, (b) => a.reduce((sum, value, i) => sum + value * b[i]!, 0)),
+    Float64Array.from(rows, (b) => {
+      let sum = 0;
+      for (let i = 0; i < a.length; i++) sum += a[i]! * b[i]!;
+      return sum;
+    }),
   );
 }
 

@@ -7,7 +7,7 @@ import {
   Refusal,
   readExport,
   type Sheet,
-  tooLarge,
+  tooLargeReading,
 } from '../../analysis/index.ts';
 
 export interface SheetFile {
@@ -53,7 +53,7 @@ export async function readExportFile(file: string, name: string): Promise<Readin
   const size = await sizeOf(file);
   if (size === null) return null;
   // a file past the limit is refused by its size, before it fills the memory
-  return tooLarge(size, name) ?? readExport(await readFile(file), name);
+  return tooLargeReading(size, name) ?? readExport(await readFile(file), name);
 }
 
 async function sizeOf(file: string): Promise<number | null> {
