@@ -9,11 +9,11 @@ import {
   type Sheet,
   sheetSources,
 } from '../../analysis/index.ts';
+import { writeWhole } from '../write-whole.ts';
 import type { ExitCode } from './exit-codes.ts';
 import { exitCodeOf } from './quantify.ts';
 import { openSheetFile } from './sheet-file.ts';
 import type { Streams } from './streams.ts';
-import { writeWhole } from './write-whole.ts';
 
 /** Writes the report as one self-contained file; the ending says which. */
 export async function reportCommand(

@@ -1,18 +1,18 @@
 import { randomUUID } from 'node:crypto';
 import { open, rename, rm } from 'node:fs/promises';
 import path from 'node:path';
-import { Refusal } from '../../analysis/index.ts';
+import { Refusal } from '../analysis/index.ts';
 
 /**
  * Writes a file so that it is there whole or not at all: a temporary file beside it, flushed to
  * the disk, then renamed over it. Throws a `Refusal` where the place cannot be written.
  */
-export async function writeWhole(file: string, text: string): Promise<void> {
+export async function writeWhole(file: string, content: string | Uint8Array): Promise<void> {
   const temporary = path.join(path.dirname(file), `.${path.basename(file)}.${randomUUID()}.part`);
   try {
     const handle = await open(temporary, 'wx');
     try {
-      await handle.writeFile(text, 'utf8');
+      await handle.writeFile(content);
       await handle.sync();
     } finally {
       await handle.close();

@@ -1,0 +1,1 @@
+export declare function builtFile(folder: string, urlPath: string): Promise<string | null>;
