@@ -144,7 +144,8 @@ export function axisNamed(heading: string): AxisWord | null {
     return { kind: 'axis', unit: unit ?? other[1] };
   }
   if (!axisNames.some((name) => startsAsWord(plain, name))) return null;
-  return { kind: 'axis', unit: unitIn(plain) };
+  const meaning = otherAxes.find(([name]) => plain.includes(name))?.[1];
+  return { kind: 'axis', unit: unitIn(plain) ?? meaning ?? null };
 }
 
 /** A column that stands beside the traces: a running number, a time, a temperature. */

@@ -75,7 +75,7 @@ export function rowsBetween(lines: LineShapes, first: number, last: number): num
 
 /**
  * Whether the row at `to` goes on where the row at `from` stands, in the order of the course, by no
- * more than the lines between them would take (half a step of tolerance for uneven ones).
+ * more than about twice what the lines between them would take (steps may be uneven, rows run together).
  */
 export function goesOn(lines: LineShapes, course: Course, from: number, to: number): boolean {
   const forward = to > from ? 1 : -1;
@@ -83,5 +83,5 @@ export function goesOn(lines: LineShapes, course: Course, from: number, to: numb
     ((lines.leads[to] ?? Number.NaN) - (lines.leads[from] ?? Number.NaN)) *
     course.direction *
     forward;
-  return away > 0 && away <= (Math.abs(to - from) + 0.5) * course.step;
+  return away > 0 && away <= (2 * Math.abs(to - from) + 1) * course.step;
 }

@@ -1,3 +1,5 @@
+import { Refusal } from '../refusal.ts';
+import { MAX_COLUMNS } from './limits.ts';
 import { isMissingMark } from './missing-mark.ts';
 import { numberKind } from './number-cell.ts';
 import { type Delimiter, splitCells } from './split-cells.ts';
@@ -20,6 +22,7 @@ export interface LineShapes {
 
 const delimiterSigns = { comma: ',', semicolon: ';', tab: '\t' } as const;
 
+/** Throws `Refusal` (`too-many-columns`). */
 export function lineShapes(lines: readonly string[], delimiter: Delimiter): LineShapes {
   const shapes: LineShape[] = new Array<LineShape>(lines.length);
   const cells = new Uint32Array(lines.length);
@@ -28,12 +31,22 @@ export function lineShapes(lines: readonly string[], delimiter: Delimiter): Line
   for (let i = 0; i < lines.length; i += 1) {
     const line = lines[i] ?? '';
     const found = shapeOf(line, delimiter);
+    if (found.cells > MAX_COLUMNS) throw tooManyColumns(i + 1, found.cells);
     shapes[i] = found.shape;
     cells[i] = found.cells;
     leads[i] = found.lead;
     if (found.shape === 'strong') strong += 1;
   }
   return { delimiter, shapes, cells, leads, strong };
+}
+
+function tooManyColumns(line: number, cells: number): Refusal {
+  return new Refusal({
+    code: 'too-many-columns',
+    message: `This line has ${cells} columns; more than ${MAX_COLUMNS} are not read.`,
+    where: { line },
+    mend: 'Export fewer traces a file, one wavelength a line.',
+  });
 }
 
 const text = { shape: 'text', cells: 0, lead: Number.NaN } as const;

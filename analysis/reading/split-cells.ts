@@ -1,6 +1,3 @@
-import { Refusal } from '../refusal.ts';
-import { MAX_COLUMNS } from './limits.ts';
-
 export type Delimiter = 'comma' | 'semicolon' | 'tab' | 'space';
 
 const signs = { comma: ',', semicolon: ';', tab: '\t' } as const;
@@ -8,21 +5,8 @@ const signs = { comma: ',', semicolon: ';', tab: '\t' } as const;
 /**
  * Cells of one line, trimmed, quotes taken off (a doubled quote inside stands for one). `space`
  * means any run of spaces and tabs; words joined by a single space stay one cell ("over range").
- * Throws `Refusal` (`too-many-columns`).
  */
 export function splitCells(line: string, delimiter: Delimiter): readonly string[] {
-  const cells = split(line, delimiter);
-  if (cells.length > MAX_COLUMNS) {
-    throw new Refusal({
-      code: 'too-many-columns',
-      message: `A line has more than ${MAX_COLUMNS} columns.`,
-      mend: 'Export fewer traces a file, one wavelength a line.',
-    });
-  }
-  return cells;
-}
-
-function split(line: string, delimiter: Delimiter): readonly string[] {
   if (delimiter === 'space') return splitAtSpaces(line);
   const sign = signs[delimiter];
   if (line.includes('"')) return splitQuoted(line, sign);
@@ -86,16 +70,15 @@ function splitAtSpaces(line: string): readonly string[] {
   const parts = line.trim().split(/\s+/);
   const cells: string[] = [];
   let at = 0;
-  let previousEnd = -1;
+  let wordEnd = -2;
   for (const part of parts) {
     if (part === '') continue;
     const start = line.indexOf(part, at);
     at = start + part.length;
-    const last = cells.at(-1);
-    const joins = last !== undefined && start === previousEnd + 1 && isWord(part) && isWord(last);
-    if (joins) cells[cells.length - 1] = `${last} ${part}`;
+    const isJoined: boolean = isWord(part) && start === wordEnd + 1;
+    if (isJoined) cells[cells.length - 1] += ` ${part}`;
     else cells.push(part);
-    previousEnd = at;
+    wordEnd = isWord(part) ? at : -2;
   }
   return cells;
 }
