@@ -139,9 +139,9 @@ export function axisNamed(heading: string): AxisWord | null {
   const bare = unitSpellings.get(plain.replace(/^[\s([]+|[\s)\]]+$/g, ''));
   if (bare) return { kind: 'axis', unit: bare };
   const other = otherAxes.find(([name]) => startsAsWord(plain, name));
-  if (other) {
+  if (other || (/^energ(?:y|ie)/.test(plain) && unitIn(plain) === 'eV')) {
     const unit = unitIn(plain);
-    return { kind: 'axis', unit: unit ?? other[1] };
+    return { kind: 'axis', unit: unit ?? other?.[1] ?? 'unknown' };
   }
   if (!axisNames.some((name) => startsAsWord(plain, name))) return null;
   const meaning = otherAxes.find(([name]) => plain.includes(name))?.[1];

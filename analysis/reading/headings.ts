@@ -73,7 +73,7 @@ function* divisions(text: string, { delimiter, cells }: DataBlock): Generator<re
     ...(text.includes('"') ? [splitCells(text, 'space')] : []),
     ...otherDelimiters.map((other) => splitCells(text, other)),
     text.trim().split(/ {2,}|\t+/),
-    splitCells(text, 'space'),
+    text.trim().split(/\s+/),
     unitsJoined(text.trim().split(/\s+/)),
   ];
   for (const attempt of attempts) if (attempt.length === cells) yield attempt;
@@ -84,7 +84,8 @@ function unitsJoined(words: readonly string[]): readonly string[] {
   const joined: string[] = [];
   for (const word of words) {
     const last = joined.at(-1);
-    if (last !== undefined && /^[([/]/.test(word)) joined[joined.length - 1] = `${last} ${word}`;
+    if (last !== undefined && /^(?:[([/]|%$)/.test(word))
+      joined[joined.length - 1] = `${last} ${word}`;
     else joined.push(word);
   }
   return joined;

@@ -116,8 +116,26 @@ function foreignWord({ core, plain, words, compact }: Heading): QuantityWord | n
   return null;
 }
 
-const goodMolarUnit =
-  /(?:^|[^\p{L}])(?:(?:l|dm3)mol-1cm-1|m-1cm-1|(?:l|dm3)\/\(molcm\)|(?:l|dm3)\/molcm|(?:l|dm3)\/mol\/cm|1\/\(mcm\)|(?:l|dm3)cm-1mol-1|cm-1m-1|lmolcm)/u;
+/** L mol⁻¹ cm⁻¹ in its usual spellings; `.` stands for any sign of multiplication or blank. */
+const goodMolarUnit = new RegExp(
+  [
+    '(?:l|dm3).mol-1.cm-1',
+    '(?:l|dm3).cm-1.mol-1',
+    'm-1.cm-1',
+    'cm-1.m-1',
+    '(?:l|dm3).[/].[(]?mol.[/]?.cm[)]?',
+    '1.[/].[(]m.cm[)]',
+  ]
+    .map((spelling) =>
+      spelling
+        .replaceAll('.', '[\\s·*×⋅.]{0,3}')
+        .replaceAll('-1', '\\^?-1')
+        .replace('dm3', 'dm\\^?3'),
+    )
+    .map((pattern) => `(?<![\\p{L}\\p{N}])(?:${pattern})(?![\\p{L}\\p{N}])`)
+    .join('|'),
+  'u',
+);
 const otherMolarUnit =
   /(?:mm|μm|m)-1cm-1|cm-1(?:mm|μm)-1|[cm]?m2(?:mmol|mol|\/mmol|\/mol)|mmol|μmol|kmol|103|104|105|1000|[x/]10|k(?:l|m-1)/;
 
@@ -127,11 +145,7 @@ function molarAbsorptivity({ plain, words, compact }: Heading): QuantityWord | n
       plain,
     );
   const isSymbol = words.some((word) => word === 'ε' || word === 'epsilon' || word === 'eps');
-  const unitText = compact.replace(
-    /^.*?(?:\(|\[|\/|,|-?coefficient|koeffizient|absorptivity|ε|epsilon|eps)/,
-    ' ',
-  );
-  const hasUnit = goodMolarUnit.test(compact) || goodMolarUnit.test(unitText);
+  const hasUnit = goodMolarUnit.test(plain);
   if (!isCoefficient && !isSymbol && !hasUnit) return null;
   if (/spe[cz]ifi/.test(plain)) return foreign('is a specific, not a molar absorptivity');
   const isScaled = /10\^|10[345](?!\d)|1000|(?:×|x|\*|\/)\s?10/.test(plain);
