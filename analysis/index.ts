@@ -19,7 +19,30 @@ export {
 export { reportCsv } from './report/report-csv.ts';
 export { type ReportOptions, reportHtml } from './report/report-html.ts';
 export { resultsJson } from './report/results-json.ts';
+export { speciesGlyph } from './report/species-glyph.ts';
+export { type SpeciesLook, speciesLook } from './report/species-look.ts';
 export { absorbingSpecies, fitSettings, productSpecies, speciesName } from './sheet/defaults.ts';
+export {
+  addAliquots,
+  addRun,
+  addSpecies,
+  addStandards,
+  addStockFor,
+  type Changes,
+  removeAliquot,
+  removeRun,
+  removeSpecies,
+  removeStandard,
+  removeStock,
+  setFit,
+  setReaction,
+  setTitle,
+  updateAliquot,
+  updateRun,
+  updateSpecies,
+  updateStandard,
+  updateStock,
+} from './sheet/edits.ts';
 export { newSheet } from './sheet/new-sheet.ts';
 export { type OpenedSheetText, openSheet } from './sheet/open-sheet.ts';
 export type {

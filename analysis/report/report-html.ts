@@ -10,6 +10,10 @@ export interface ReportOptions {
   readonly sources: readonly SheetSource[];
 }
 
-export function reportHtml(sheet: Sheet, { results }: Quantification, options: ReportOptions): string {
+export function reportHtml(
+  sheet: Sheet,
+  { results }: Quantification,
+  options: ReportOptions,
+): string {
   return `${sheet.title} ${results.program} ${options.madeOn}`;
 }

@@ -1,0 +1,200 @@
+import type {
+  EmbeddedSpectrum,
+  Sheet,
+  SheetAliquot,
+  SheetFit,
+  SheetRun,
+  SheetSpecies,
+  SheetStandard,
+  SheetStock,
+} from './schema.ts';
+
+/**
+ * Changes of a sheet, each a function from sheet to sheet that leaves a sheet which `openSheet`
+ * takes: what refers to a thing that goes, goes or lets go with it. A member given as `undefined`
+ * is taken out.
+ */
+
+/** Members to set; `undefined` takes a member out. */
+export type Changes<T> = { readonly [K in keyof T]?: T[K] | undefined };
+
+export function setTitle(sheet: Sheet, title: string): Sheet {
+  return { ...sheet, title };
+}
+
+export function setReaction(sheet: Sheet, changes: Changes<Sheet['reaction']>): Sheet {
+  return { ...sheet, reaction: changed(sheet.reaction, changes) };
+}
+
+export function setFit(sheet: Sheet, changes: Changes<SheetFit>): Sheet {
+  return { ...sheet, fit: changed(sheet.fit ?? {}, changes) };
+}
+
+/** Adds a species with an id of its own. */
+export function addSpecies(
+  sheet: Sheet,
+  species: Pick<SheetSpecies, 'name' | 'cores' | 'arms'>,
+): Sheet {
+  const id = freeId('species', sheet.species);
+  return { ...sheet, species: [...sheet.species, { ...species, id }] };
+}
+
+export function updateSpecies(sheet: Sheet, id: string, changes: Changes<SheetSpecies>): Sheet {
+  return { ...sheet, species: updated(sheet.species, id, changes) };
+}
+
+/** Takes a species out, with its standards, its stocks and its charges. Core and arm stay. */
+export function removeSpecies(sheet: Sheet, id: string): Sheet {
+  if (id === sheet.reaction.core || id === sheet.reaction.arm) return sheet;
+  return {
+    ...sheet,
+    species: without(sheet.species, id),
+    stocks: (sheet.stocks ?? []).filter(({ species }) => species !== id),
+    standards: (sheet.standards ?? []).filter(({ species }) => species !== id),
+    runs: (sheet.runs ?? []).map((run) => {
+      if (!run.chargedMol || !(id in run.chargedMol)) return run;
+      const { [id]: _, ...chargedMol } = run.chargedMol;
+      return { ...run, chargedMol };
+    }),
+  };
+}
+
+/** Adds one standard for each spectrum, all of one species, concentrations still to be typed. */
+export function addStandards(
+  sheet: Sheet,
+  spectra: readonly EmbeddedSpectrum[],
+  species: string,
+): Sheet {
+  let standards = sheet.standards ?? [];
+  for (const embedded of spectra) {
+    const id = freeId('S', standards);
+    const kind = embedded.absorbance ? 'solution' : 'molar-absorptivity';
+    standards = [...standards, { id, species, kind, spectrum: { embedded } }];
+  }
+  return { ...sheet, standards };
+}
+
+/** A standard that changes its species lets go of a stock of the old one. */
+export function updateStandard(sheet: Sheet, id: string, changes: Changes<SheetStandard>): Sheet {
+  const stocks = new Map((sheet.stocks ?? []).map((stock) => [stock.id, stock.species]));
+  const standards = updated(sheet.standards ?? [], id, changes).map((standard) => {
+    if (standard.stock === undefined || stocks.get(standard.stock) === standard.species) {
+      return standard;
+    }
+    const { stock: _, ...rest } = standard;
+    return rest;
+  });
+  return { ...sheet, standards };
+}
+
+export function removeStandard(sheet: Sheet, id: string): Sheet {
+  return { ...sheet, standards: without(sheet.standards ?? [], id) };
+}
+
+/** Adds a stock of the standard's species and takes the standard to be made from it. */
+export function addStockFor(sheet: Sheet, standardId: string): Sheet {
+  const standard = sheet.standards?.find(({ id }) => id === standardId);
+  if (!standard) return sheet;
+  const stocks = sheet.stocks ?? [];
+  const id = freeId(`${standard.species}-stock`, stocks);
+  return {
+    ...sheet,
+    stocks: [...stocks, { id, species: standard.species }],
+    standards: updated(sheet.standards ?? [], standardId, { stock: id }),
+  };
+}
+
+export function updateStock(sheet: Sheet, id: string, changes: Changes<SheetStock>): Sheet {
+  return { ...sheet, stocks: updated(sheet.stocks ?? [], id, changes) };
+}
+
+/** Standards made from it stay, without a stock. */
+export function removeStock(sheet: Sheet, id: string): Sheet {
+  return {
+    ...sheet,
+    stocks: without(sheet.stocks ?? [], id),
+    standards: (sheet.standards ?? []).map((standard) => {
+      if (standard.stock !== id) return standard;
+      const { stock: _, ...rest } = standard;
+      return rest;
+    }),
+  };
+}
+
+/** Adds one aliquot for each spectrum. */
+export function addAliquots(
+  sheet: Sheet,
+  spectra: readonly EmbeddedSpectrum[],
+  run: string | null,
+): Sheet {
+  let aliquots = sheet.aliquots ?? [];
+  for (const embedded of spectra) {
+    const id = freeId('a', aliquots);
+    aliquots = [...aliquots, { id, ...(run === null ? {} : { run }), spectrum: { embedded } }];
+  }
+  return { ...sheet, aliquots };
+}
+
+export function updateAliquot(sheet: Sheet, id: string, changes: Changes<SheetAliquot>): Sheet {
+  return { ...sheet, aliquots: updated(sheet.aliquots ?? [], id, changes) };
+}
+
+export function removeAliquot(sheet: Sheet, id: string): Sheet {
+  return { ...sheet, aliquots: without(sheet.aliquots ?? [], id) };
+}
+
+/** Adds a run and, if asked, puts an aliquot into it. */
+export function addRun(sheet: Sheet, aliquotId?: string): Sheet {
+  const id = freeId('r', sheet.runs ?? []);
+  const added = { ...sheet, runs: [...(sheet.runs ?? []), { id, name: '' }] };
+  return aliquotId === undefined ? added : updateAliquot(added, aliquotId, { run: id });
+}
+
+export function updateRun(sheet: Sheet, id: string, changes: Changes<SheetRun>): Sheet {
+  return { ...sheet, runs: updated(sheet.runs ?? [], id, changes) };
+}
+
+/** Aliquots of the run stay, without a run. */
+export function removeRun(sheet: Sheet, id: string): Sheet {
+  return {
+    ...sheet,
+    runs: without(sheet.runs ?? [], id),
+    aliquots: (sheet.aliquots ?? []).map((aliquot) => {
+      if (aliquot.run !== id) return aliquot;
+      const { run: _, ...rest } = aliquot;
+      return rest;
+    }),
+  };
+}
+
+interface Named {
+  readonly id: string;
+}
+
+/** The prefix with the first number that is free. */
+function freeId(prefix: string, taken: readonly Named[]): string {
+  const ids = new Set(taken.map(({ id }) => id));
+  let number = 1;
+  while (ids.has(`${prefix}${number}`)) number++;
+  return `${prefix}${number}`;
+}
+
+function without<T extends Named>(list: readonly T[], id: string): readonly T[] {
+  return list.filter((entry) => entry.id !== id);
+}
+
+function updated<T extends Named>(
+  list: readonly T[],
+  id: string,
+  changes: Changes<T>,
+): readonly T[] {
+  return list.map((entry) => (entry.id === id ? changed(entry, changes) : entry));
+}
+
+function changed<T extends object>(value: T, changes: Changes<T>): T {
+  const result = { ...value, ...changes };
+  for (const key of Object.keys(changes) as (keyof T)[]) {
+    if (changes[key] === undefined) delete result[key];
+  }
+  return result as T;
+}

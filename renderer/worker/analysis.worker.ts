@@ -1,0 +1,63 @@
+import { expose } from 'comlink';
+import {
+  type Quantification,
+  quantify,
+  type Reading,
+  Refusal,
+  type RefusalText,
+  readExport,
+  reportCsv,
+  reportHtml,
+  resultsJson,
+  type Sheet,
+  sheetSources,
+} from '../../analysis/index.ts';
+
+/** The science off the screen's thread. Errors lose their fields on the way, so refusals cross as data. */
+export type Outcome<T> =
+  | { readonly ok: true; readonly value: T }
+  | { readonly ok: false; readonly refusal: RefusalText };
+
+export interface ReportTexts {
+  readonly html: string;
+  readonly csv: string;
+  readonly json: string;
+}
+
+const noFiles: ReadonlyMap<string, Reading> = new Map();
+
+const analysis = {
+  read: (file: { readonly name: string; readonly bytes: Uint8Array }): Reading =>
+    readExport(file.bytes, file.name),
+
+  quantify: (sheet: Sheet): Outcome<Quantification> => outcome(() => quantify(sheet, noFiles)),
+
+  report: (sheet: Sheet, madeOn: string): Outcome<ReportTexts> =>
+    outcome(() => {
+      const quantification = quantify(sheet, noFiles);
+      const { results } = quantification;
+      return {
+        html: reportHtml(sheet, quantification, {
+          madeOn,
+          program: results.program,
+          warnings: results.warnings,
+          sources: sheetSources(sheet, noFiles),
+        }),
+        csv: reportCsv(sheet, quantification),
+        json: resultsJson(results),
+      };
+    }),
+};
+
+export type AnalysisWorker = typeof analysis;
+
+function outcome<T>(work: () => T): Outcome<T> {
+  try {
+    return { ok: true, value: work() };
+  } catch (error) {
+    if (error instanceof Refusal) return { ok: false, refusal: error.toText() };
+    throw error;
+  }
+}
+
+expose(analysis);
