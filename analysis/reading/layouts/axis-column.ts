@@ -1,4 +1,5 @@
 import { Refusal } from '../../refusal.ts';
+import { gapNote } from '../axis-gaps.ts';
 import { type AxisUnit, asideNamed, axisNamed, otherAxisIn } from '../column-words.ts';
 import { ambiguousNumber } from '../decimal-sign.ts';
 import { cellValue, numberKind } from '../number-cell.ts';
@@ -40,6 +41,7 @@ export function findAxis(table: Table): Axis {
   const settlesDecimal = checkDecimal(table, column, x, unit.unit);
   refuseSecondAxis(table, column, x);
   if (named.length === 0) refuseWavelengthsAcross(table, column);
+  const gaps = gapNote(x, unit.unit);
   return {
     column,
     x,
@@ -47,7 +49,7 @@ export function findAxis(table: Table): Axis {
     indexColumn: chosen.indexColumn,
     settlesDecimal,
     unit: unit.unit,
-    assumptions: unit.assumptions,
+    assumptions: [...unit.assumptions, ...(gaps ? [gaps] : [])],
   };
 }
 

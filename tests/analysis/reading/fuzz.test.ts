@@ -106,15 +106,20 @@ const damages: Record<string, Damage> = {
 const read = (text: string) => readExport(encode(text, 'utf-8'), 'export.csv');
 
 /** Whether all that was read stands in the truth at its wavelength, and nothing of it is lacking. */
-function isWholeTruth(reading: Reading): boolean {
+const isWholeTruth = (reading: Reading) => isTruth(reading, POINTS);
+
+/** A file cut exactly at the end of a row is a shorter file; what it holds must be the truth. */
+const isTrueStart = (reading: Reading) => isTruth(reading, reading.spectra[0]?.points ?? 0);
+
+function isTruth(reading: Reading, points: number): boolean {
   return (
     reading.spectra.length === truth.traces.length &&
     reading.spectra.every((spectrum, t) => {
       const values = Array.from(spectrum.absorbance ?? []);
-      const expected = truth.traces[t]?.values.map(Number);
+      const expected = truth.traces[t]?.values.slice(0, points).map(Number);
       return (
         JSON.stringify(Array.from(spectrum.wavelengthNm)) ===
-          JSON.stringify(truth.wavelengths.map(Number)) &&
+          JSON.stringify(truth.wavelengths.slice(0, points).map(Number)) &&
         JSON.stringify(values) === JSON.stringify(expected)
       );
     })
@@ -134,12 +139,13 @@ function isTold(reading: Reading, sound: Reading): boolean {
 const place = fc.double({ min: 0, max: 1, maxExcluded: true, noNaN: true });
 
 describe('damage is told', () => {
-  it.each(Object.entries(damages))('%s', (_, damage) => {
+  it.each(Object.entries(damages))('%s', (kind, damage) => {
     fc.assert(
       fc.property(fc.constantFrom(...shapes), place, place, (shape, at, other) => {
         const text = writeText(truth, shape);
         const reading = read(damage(text, at, other, shape));
-        expect(isWholeTruth(reading) || isTold(reading, read(text))).toBe(true);
+        const isTrue = kind === 'cut anywhere' ? isTrueStart(reading) : isWholeTruth(reading);
+        expect(isTrue || isTold(reading, read(text))).toBe(true);
       }),
       { numRuns: 400, seed: 4711 },
     );
