@@ -1,14 +1,15 @@
 import { wrap } from 'comlink';
-import type { Reading, Sheet } from '../../analysis/index.ts';
+import type { Quantification, Reading, Sheet } from '../../analysis/index.ts';
 import type { AnalysisWorker, Outcome, ReportTexts } from './analysis.worker.ts';
 
 const worker = new Worker(new URL('./analysis.worker.ts', import.meta.url), { type: 'module' });
 const remote = wrap<AnalysisWorker>(worker);
 
-export const quantifySheet = (sheet: Sheet) => remote.quantify(sheet);
+export const quantifySheet = async (sheet: Sheet): Promise<Outcome<Quantification>> =>
+  remote.quantify(sheet);
 
 export const readFileBytes = (name: string, bytes: Uint8Array): Promise<Reading> =>
   remote.read({ name, bytes });
 
-export const reportTexts = (sheet: Sheet): Promise<Outcome<ReportTexts>> =>
+export const reportTexts = async (sheet: Sheet): Promise<Outcome<ReportTexts>> =>
   remote.report(sheet, new Date().toISOString());

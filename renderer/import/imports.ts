@@ -1,0 +1,116 @@
+import { signal } from '@preact/signals';
+import {
+  addAliquots,
+  addStandards,
+  type EmbeddedSpectrum,
+  embeddedFrom,
+  productSpecies,
+  type Reading,
+  type Sheet,
+} from '../../analysis/index.ts';
+import type { OpenedFile } from '../../main/desktop/channels.ts';
+import { notify } from '../state/notices.ts';
+import { change, sheet } from '../state/store.ts';
+import { readFileBytes } from '../worker/analysis-client.ts';
+
+/** Where spectra are to go. */
+export type Destination = 'standards' | 'aliquots';
+
+/** Spectra that were read and whose destination is still to be asked. */
+export const pending = signal<readonly EmbeddedSpectrum[] | null>(null);
+
+/** Progress of reading many files; null when nothing is being read. */
+export const reading = signal<{ readonly done: number; readonly of: number } | null>(null);
+let isCancelled = false;
+
+export function cancelReading(): void {
+  isCancelled = true;
+}
+
+/** Reads exports and puts their traces where they were dropped, or asks. Nothing vanishes in silence. */
+export async function addExports(
+  files: readonly OpenedFile[],
+  destination: Destination | null,
+): Promise<void> {
+  if (files.length === 0) return;
+  const readings = await readAll(files);
+  const spectra = readings.flatMap((each) =>
+    each.spectra.flatMap((_, trace) => embeddedFrom(each, trace) ?? []),
+  );
+  tellWhatWasRead(readings, files.length);
+  if (spectra.length === 0) return;
+  if (destination === null) pending.value = spectra;
+  else place(spectra, destination);
+}
+
+export function place(spectra: readonly EmbeddedSpectrum[], destination: Destination): void {
+  pending.value = null;
+  const count = spectra.length === 1 ? '1 spectrum' : `${spectra.length} spectra`;
+  if (destination === 'aliquots') {
+    const [run] = sheet.value.runs ?? [];
+    change(`add ${count} as aliquots`, (before) => addAliquots(before, spectra, run?.id ?? null));
+  } else {
+    change(`add ${count} as standards`, (before) =>
+      spectra.reduce(
+        (next, spectrum) => addStandards(next, [spectrum], likelySpecies(next, spectrum)),
+        before,
+      ),
+    );
+  }
+}
+
+/** A species whose id or name stands in the heading or the file name; else the first product. A guess that is shown. */
+export function likelySpecies(into: Sheet, spectrum: EmbeddedSpectrum): string {
+  const words = `${spectrum.source?.file ?? ''} ${spectrum.name}`.toLowerCase();
+  const named = into.species.find(({ id, name }) =>
+    [id, name ?? ''].some((word) => word.length > 1 && words.includes(word.toLowerCase())),
+  );
+  return (named ?? productSpecies(into)[0] ?? into.species[0])?.id ?? '';
+}
+
+async function readAll(files: readonly OpenedFile[]): Promise<Reading[]> {
+  const readings: Reading[] = [];
+  isCancelled = false;
+  reading.value = { done: 0, of: files.length };
+  try {
+    for (const { name, bytes } of files) {
+      if (isCancelled) {
+        notify('news', `Stopped: ${readings.length} of ${files.length} files were read.`);
+        break;
+      }
+      readings.push(await readFileBytes(name, bytes));
+      reading.value = { done: readings.length, of: files.length };
+    }
+  } finally {
+    reading.value = null;
+  }
+  return readings;
+}
+
+function tellWhatWasRead(readings: readonly Reading[], asked: number): void {
+  const refused = readings.flatMap(({ file, refused: parts }) =>
+    parts.map(({ what, why, line }) => {
+      const place = line === null ? file : `${file}, line ${line}`;
+      return what === 'the file' ? `${place}: ${why}` : `${place}, ${what}: ${why}`;
+    }),
+  );
+  const lines = readings.flatMap(readingLines);
+  const traces = readings.reduce((sum, { spectra }) => sum + spectra.length, 0);
+  if (traces > 0) {
+    const from = asked === 1 ? '1 file' : `${asked} files`;
+    notify('news', `Read ${traces === 1 ? '1 trace' : `${traces} traces`} from ${from}.`, lines);
+  }
+  if (refused.length > 0) {
+    const what = refused.length === 1 ? 'One part' : `${refused.length} parts`;
+    notify('refusal', `${what} of what was given could not be used:`, refused);
+  }
+}
+
+/** One line for each trace: what was understood, and what was left open. */
+function readingLines({ file, encoding, delimiter, decimal, spectra }: Reading): string[] {
+  return spectra.map(({ name, quantity, points, wavelengthNm, assumptions }) => {
+    const range = `${wavelengthNm[0]} to ${wavelengthNm.at(-1)} nm`;
+    const understood = `${encoding}, delimiter ${delimiter}, decimal ${decimal}; ${quantity.replaceAll('-', ' ')}, ${points} points, ${range}.`;
+    return [`${file} · ${name}: ${understood}`, ...assumptions].join(' ');
+  });
+}

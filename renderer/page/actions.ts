@@ -1,0 +1,164 @@
+import {
+  embeddedFrom,
+  embedSpectra,
+  filesOf,
+  newSheet,
+  openSheet,
+  type Reading,
+  Refusal,
+  type Sheet,
+  sheetText,
+} from '../../analysis/index.ts';
+import type { MenuCommand, OpenedFile } from '../../main/desktop/channels.ts';
+import { addExports } from '../import/imports.ts';
+import type { SheetSource } from '../platform/platform.ts';
+import { platform } from '../platform/this-platform.ts';
+import { clearKept } from '../state/keep.ts';
+import { attempt, notify, tellRefusal } from '../state/notices.ts';
+import {
+  change,
+  fileName,
+  isOpen,
+  isUnsaved,
+  markSaved,
+  redo,
+  replaceSheet,
+  saveHandle,
+  sheet,
+  undo,
+} from '../state/store.ts';
+import { readFileBytes, reportTexts } from '../worker/analysis-client.ts';
+import { awaited } from './awaited-files.ts';
+import { confirmLoss } from './confirm-loss.ts';
+import { sampleSource } from './sample.ts';
+
+/** What the buttons, the keys and the native menu do. */
+export const actions: Record<MenuCommand, () => Promise<void>> = {
+  'new-sheet': () =>
+    replacing(async () => replaceSheet(newSheet(), { name: null, handle: null, isSaved: true })),
+  'open-sheet': () =>
+    replacing(async () => {
+      const source = await platform.openSheet();
+      if (source) await openSource(source);
+    }),
+  'open-sample': () => replacing(async () => openSource(await sampleSource())),
+  'add-exports': async () => addExports(await platform.openExports(), null),
+  save: () => save(saveHandle.value),
+  'save-as': () => save(null),
+  'export-csv': () => exported('csv'),
+  'export-html': () => exported('html'),
+  'export-pdf': async () => {
+    const texts = await reportTexts(present());
+    if (!texts.ok) return tellRefusal(texts.refusal);
+    tellWritten(await platform.exportPdf(texts.value.html, `${baseName()}.pdf`));
+  },
+  undo: async () => undo(),
+  redo: async () => redo(),
+};
+
+export function run(command: MenuCommand): void {
+  void attempt(actions[command]);
+}
+
+/** Opens a sheet with the exports that came with it; asks for those that did not. */
+export async function openSource(source: SheetSource): Promise<void> {
+  const { sheet: opened, warnings } = openSheet(source.text, source.name);
+  const files = new Map(source.files.map((file) => [file.name, file]));
+  const readings = await readNamed(filesOf(opened), files);
+  const next = embedSpectra(opened, (file, trace) => {
+    const reading = readings.get(file);
+    return reading ? embeddedFrom(reading, trace) : null;
+  });
+  replaceSheet(next, { name: source.name, handle: source.handle, isSaved: true });
+  awaited.value = filesOf(next);
+  if (warnings.length > 0) notify('news', 'The sheet holds what is not known here:', warnings);
+  tellRefused(readings);
+}
+
+/** Takes in files that the open sheet waits for, by their names; gives back those it does not. */
+export async function takeAwaited(files: readonly OpenedFile[]): Promise<readonly OpenedFile[]> {
+  const waiting = awaited.value;
+  if (waiting.length === 0) return files;
+  const lastPart = (name: string): string => name.split(/[\\/]/).at(-1) ?? name;
+  const byName = new Map(files.map((file) => [lastPart(file.name), file]));
+  const found = new Map(
+    waiting.flatMap((name) => {
+      const file = byName.get(lastPart(name));
+      return file ? [[name, file] as const] : [];
+    }),
+  );
+  const readings = await readNamed([...found.keys()], found);
+  if (readings.size > 0) {
+    change('take in files', (before) =>
+      embedSpectra(before, (file, trace) => {
+        const reading = readings.get(file);
+        return reading ? embeddedFrom(reading, trace) : null;
+      }),
+    );
+    awaited.value = filesOf(sheet.value);
+  }
+  tellRefused(readings);
+  const used = new Set(found.values());
+  return files.filter((file) => !used.has(file));
+}
+
+async function readNamed(
+  names: readonly string[],
+  files: ReadonlyMap<string, OpenedFile>,
+): Promise<Map<string, Reading>> {
+  const readings = new Map<string, Reading>();
+  for (const name of names) {
+    const file = files.get(name);
+    if (file) readings.set(name, await readFileBytes(name, file.bytes));
+  }
+  return readings;
+}
+
+function tellRefused(readings: ReadonlyMap<string, Reading>): void {
+  const refused = [...readings.values()].flatMap(({ file, refused: parts }) =>
+    parts.map(({ why, line }) => `${file}${line === null ? '' : `, line ${line}`}: ${why}`),
+  );
+  if (refused.length > 0) notify('refusal', 'Files of the sheet could not be used:', refused);
+}
+
+async function replacing(work: () => Promise<void>): Promise<void> {
+  if (isUnsaved.value && !(await confirmLoss())) return;
+  await work();
+}
+
+async function save(handle: unknown): Promise<void> {
+  const written = present();
+  const saved = await platform.saveSheet(sheetText(written), handle, `${baseName()}.sheet.json`);
+  if (!saved) return;
+  markSaved(written, saved.name, saved.handle);
+  await clearKept();
+  notify('news', `Saved as ${saved.name}.`);
+}
+
+async function exported(kind: 'csv' | 'html'): Promise<void> {
+  const texts = await reportTexts(present());
+  if (!texts.ok) return tellRefusal(texts.refusal);
+  tellWritten(await platform.exportText(texts.value[kind], `${baseName()}.${kind}`, kind));
+}
+
+function present(): Sheet {
+  if (isOpen.value) return sheet.value;
+  throw new Refusal({
+    code: 'no-sheet',
+    message: 'No sheet is open.',
+    mend: 'Begin a new sheet, or open one.',
+  });
+}
+
+function tellWritten(name: string | null): void {
+  if (name !== null) notify('news', `Written: ${name}.`);
+}
+
+function baseName(): string {
+  const named = fileName.value?.replace(/(\.sheet)?\.json$/i, '');
+  const titled = sheet.value.title
+    ?.replace(/[^\p{L}\p{N} _-]+/gu, '')
+    .trim()
+    .slice(0, 60);
+  return named || titled || 'sheet';
+}

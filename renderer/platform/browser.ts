@@ -1,0 +1,149 @@
+import { Refusal } from '../../analysis/index.ts';
+import type { ExportKind, OpenedFile } from '../../main/desktop/channels.ts';
+import type { Platform, SheetSource } from './platform.ts';
+
+const types: Record<ExportKind, string> = {
+  csv: 'text/csv',
+  html: 'text/html',
+  json: 'application/json',
+};
+
+/** Where a browser can write a file that the user chose (File System Access API), as far as it is used here. */
+interface WritableHandle {
+  readonly name: string;
+  createWritable(): Promise<{ write(text: string): Promise<void>; close(): Promise<void> }>;
+}
+
+interface FilePickers {
+  showSaveFilePicker?: (options: {
+    suggestedName: string;
+    types: { description: string; accept: Record<string, string[]> }[];
+  }) => Promise<WritableHandle>;
+}
+
+/** The page in a plain browser: file inputs, downloads, and the file picker where there is one. */
+export function browserPlatform(): Platform {
+  return {
+    kind: 'browser',
+    openSheet: async () => {
+      const [file] = await askForFiles({ accept: '.json', multiple: false });
+      return file ? sheetSource(file) : null;
+    },
+    openExports: async () =>
+      Promise.all((await askForFiles({ accept: '', multiple: true })).map(opened)),
+    saveSheet: async (text, handle, suggestedName) => {
+      const target = isWritable(handle) ? handle : await askWhereToSave(suggestedName);
+      if (target === null) return null;
+      if (target === 'download') {
+        download(text, suggestedName, 'application/json');
+        return { name: suggestedName, handle: null };
+      }
+      await writeTo(target, text);
+      return { name: target.name, handle: target };
+    },
+    exportText: async (text, suggestedName, kind) => {
+      download(text, suggestedName, types[kind]);
+      return suggestedName;
+    },
+    exportPdf: async (html) => {
+      printPage(html);
+      return null;
+    },
+    onCommand: () => {},
+    onOpenRequested: () => {},
+    setUnsaved: (unsaved) => {
+      window.onbeforeunload = unsaved ? (event) => event.preventDefault() : null;
+    },
+  };
+}
+
+export async function opened(file: File): Promise<OpenedFile> {
+  // past this an export is refused by its size; its first bytes are enough to say so
+  const limit = 64 * 1024 * 1024 + 1;
+  const part = file.size > limit ? file.slice(0, limit) : file;
+  return { name: file.name, bytes: new Uint8Array(await part.arrayBuffer()) };
+}
+
+/** A sheet in a browser comes alone: its folder cannot be looked into. */
+export async function sheetSource(file: File): Promise<SheetSource> {
+  if (file.size > 512 * 1024 * 1024) {
+    throw new Refusal({
+      code: 'sheet-too-large',
+      message: 'The file is larger than any sheet.',
+      where: { file: file.name },
+      mend: 'Choose a *.sheet.json file.',
+    });
+  }
+  return { name: file.name, text: await file.text(), handle: null, files: [], missing: [] };
+}
+
+function askForFiles(options: { accept: string; multiple: boolean }): Promise<readonly File[]> {
+  return new Promise((resolve) => {
+    const input = document.createElement('input');
+    input.type = 'file';
+    input.accept = options.accept;
+    input.multiple = options.multiple;
+    input.onchange = () => resolve([...(input.files ?? [])]);
+    input.oncancel = () => resolve([]);
+    input.click();
+  });
+}
+
+async function askWhereToSave(suggestedName: string): Promise<WritableHandle | 'download' | null> {
+  const { showSaveFilePicker } = window as FilePickers;
+  if (!showSaveFilePicker) return 'download';
+  try {
+    return await showSaveFilePicker.call(window, {
+      suggestedName,
+      types: [{ description: 'Sheet', accept: { 'application/json': ['.json'] } }],
+    });
+  } catch (error) {
+    if (error instanceof DOMException && error.name === 'AbortError') return null;
+    // a page without the right to the picker can still download
+    return 'download';
+  }
+}
+
+/** The browser writes to a temporary copy and puts it in place on `close`: whole or not at all. */
+async function writeTo(handle: WritableHandle, text: string): Promise<void> {
+  try {
+    const stream = await handle.createWritable();
+    await stream.write(text);
+    await stream.close();
+  } catch (error) {
+    throw new Refusal({
+      code: 'cannot-write',
+      message: `The file could not be written (${error instanceof Error ? error.message : 'no reason given'}); what was there before is untouched.`,
+      where: { file: handle.name },
+      mend: 'Save it under another name.',
+    });
+  }
+}
+
+function isWritable(handle: unknown): handle is WritableHandle {
+  return typeof handle === 'object' && handle !== null && 'createWritable' in handle;
+}
+
+function download(text: string, name: string, type: string): void {
+  const url = URL.createObjectURL(new Blob([text], { type: `${type};charset=utf-8` }));
+  const link = document.createElement('a');
+  link.href = url;
+  link.download = name;
+  link.click();
+  // the download has taken hold of the blob by the next turn
+  setTimeout(() => URL.revokeObjectURL(url), 10_000);
+}
+
+/** Opens the report in a window of its own and its print dialog, where "save as PDF" is. */
+function printPage(html: string): void {
+  const url = URL.createObjectURL(new Blob([html], { type: 'text/html;charset=utf-8' }));
+  const page = window.open(url, '_blank');
+  if (!page) {
+    throw new Refusal({
+      code: 'window-blocked',
+      message: 'The browser did not allow the report to open in a window.',
+      mend: 'Allow windows for this page, or export the report as HTML and print that.',
+    });
+  }
+  page.addEventListener('load', () => page.print());
+}
