@@ -121,7 +121,7 @@ export function plainHeading(heading: string): string {
 /** Unit named anywhere in a heading as a word of its own. */
 function unitIn(plain: string): AxisUnit | 'unknown' | null {
   if (plain.includes('cm-1') || plain.includes('1/cm') || /cm\^\(?-1/.test(plain)) return 'cm-1';
-  const words = plain.split(/[\s()[\]{},;:/]+/);
+  const words = plain.split(/[\s()[\]{},;:./]+/);
   for (const word of words) {
     const unit = unitSpellings.get(word);
     if (unit) return unit;

@@ -27,17 +27,24 @@ const delimiters: readonly Delimiter[] = ['tab', 'semicolon', 'comma', 'space'];
  * Finds the data among header and footer lines, under the delimiter that makes the longest stretch
  * of rows. Throws `Refusal` (`no-numbers`, `text-in-the-data`, `ragged-row`, `several-blocks`).
  */
-export function findDataBlock({ lines, lastIsOpen }: Lines): DataBlock {
-  let best: { shapes: LineShapes; segments: readonly Segment[]; main: Segment } | null = null;
+export function findDataBlock(text: Lines): DataBlock {
+  let best: Found | null = null;
   for (const delimiter of delimiters) {
-    const shapes = lineShapes(lines, delimiter);
+    const shapes = lineShapes(text.lines, delimiter);
     if (shapes.strong === 0) continue;
     const segments = segmentsOf(shapes);
     const main = largestSegment(segments);
     if (main && main.strong > (best?.main.strong ?? 0)) best = { shapes, segments, main };
   }
-  if (!best) throw noNumbers(lines);
-  return trimmed(best.shapes, best.segments, best.main, lines, lastIsOpen);
+  if (!best) throw noNumbers(text.lines);
+  return trimmed(best, text);
+}
+
+/** The lines under one delimiter, with the stretch that has the most rows. */
+interface Found {
+  readonly shapes: LineShapes;
+  readonly segments: readonly Segment[];
+  readonly main: Segment;
 }
 
 function noNumbers(lines: readonly string[]): Refusal {
@@ -51,13 +58,8 @@ function noNumbers(lines: readonly string[]): Refusal {
   });
 }
 
-function trimmed(
-  shapes: LineShapes,
-  segments: readonly Segment[],
-  main: Segment,
-  lines: readonly string[],
-  lastIsOpen: boolean,
-): DataBlock {
+function trimmed(found: Found, text: Lines): DataBlock {
+  const { shapes, segments, main } = found;
   const all = rowsBetween(shapes, main.first, main.last);
   const course = courseOf(shapes, all);
   const { rows, assumptions } = course
@@ -66,7 +68,8 @@ function trimmed(
   const notes = [...assumptions];
   for (const segment of segments) {
     if (segment === main) continue;
-    const note = besideTheData(shapes, course, rows, segment, main, lines, lastIsOpen);
+    const note =
+      (course && goingOn(found, course, rows, segment, text)) ?? standingApart(segment, main);
     if (note) notes.push(note);
   }
   return { delimiter: shapes.delimiter, cells: main.cells, rows, assumptions: notes };
@@ -111,31 +114,31 @@ function standsApart(first: number, last: number): string {
   return `${lines} numbers that stand apart from the data and were left out.`;
 }
 
-/** A note on numbers outside the block, or a refusal where they may well belong to it. */
-function besideTheData(
-  shapes: LineShapes,
-  course: Course | null,
+/**
+ * Numbers outside the block that go on where it ends belong to it: refused, but for a last line
+ * that was cut, which is told. Null where the numbers do not go on with the block.
+ */
+function goingOn(
+  { shapes, main }: Found,
+  course: Course,
   rows: readonly number[],
   segment: Segment,
-  main: Segment,
-  lines: readonly string[],
-  lastIsOpen: boolean,
+  { lines, lastIsOpen }: Lines,
 ): string | null {
   const isBefore = segment.first < main.first;
   const edge = (isBefore ? rows[0] : rows.at(-1)) ?? main.first;
   const near = isBefore ? segment.last : segment.first;
-  if (course && goesOn(shapes, course, edge, near)) {
-    const isCut = lastIsOpen && segment.first === lines.length - 1 && segment.cells < main.cells;
-    if (isCut) {
-      return `Line ${segment.first + 1}, the last, stops half way and has no line end: the file seems to have been cut, and this line was left out.`;
-    }
-    throw brokenData(shapes, edge, near, main);
-  }
-  const isBlock =
-    segment.cells === main.cells && segment.strong >= Math.max(FEW_ROWS, main.strong / 20);
-  if (isBlock) throw severalBlocks(segment, main);
-  if (segment.strong === 0) return null;
-  return standsApart(segment.first + 1, segment.last + 1);
+  if (!goesOn(shapes, course, edge, near)) return null;
+  const isCut = lastIsOpen && segment.first === lines.length - 1 && segment.cells < main.cells;
+  if (!isCut) throw brokenData(shapes, edge, near, main);
+  return `Line ${segment.first + 1}, the last, stops half way and has no line end: the file seems to have been cut, and this line was left out.`;
+}
+
+/** A note on numbers that have nothing to do with the block; refuses what is a block of its own. */
+function standingApart(segment: Segment, main: Segment): string | null {
+  const many = Math.max(FEW_ROWS, main.strong / 20);
+  if (segment.cells === main.cells && segment.strong >= many) throw severalBlocks(segment, main);
+  return segment.strong === 0 ? null : standsApart(segment.first + 1, segment.last + 1);
 }
 
 function severalBlocks(segment: Segment, main: Segment): Refusal {

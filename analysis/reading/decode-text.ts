@@ -1,7 +1,7 @@
 import { Refusal } from '../refusal.ts';
 import { binaryRefusal } from './not-text.ts';
 
-export type Encoding = 'utf-8' | 'utf-8 with byte-order mark' | 'utf-16le' | 'utf-16be' | 'latin-1';
+type Encoding = 'utf-8' | 'utf-8 with byte-order mark' | 'utf-16le' | 'utf-16be' | 'latin-1';
 
 export interface DecodedText {
   readonly text: string;

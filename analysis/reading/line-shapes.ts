@@ -8,7 +8,7 @@ import { type Delimiter, splitCells } from './split-cells.ts';
  * What the lines look like under one delimiter. `strong` lines are data: a number first, then
  * numbers or known marks of missing points. `weak` ones begin with a number but hold other text too.
  */
-export type LineShape = 'blank' | 'text' | 'strong' | 'weak';
+type LineShape = 'blank' | 'text' | 'strong' | 'weak';
 
 export interface LineShapes {
   readonly delimiter: Delimiter;

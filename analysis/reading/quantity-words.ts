@@ -212,7 +212,7 @@ function absorbanceWord({ core, plain, words }: Heading): QuantityWord | null {
     core === 'E' ||
     core === 'OD' ||
     core === 'AU' ||
-    /^[\s([]*au[\s)\]]*$/.test(plain);
+    /^au$|[([]\s*au\s*[)\]]/.test(plain);
   if (!isNamed) return null;
   if (plain.includes('%'))
     return foreign('is an absorptance (the part of the light that is absorbed)');

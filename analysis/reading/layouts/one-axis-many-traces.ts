@@ -47,7 +47,13 @@ function besideTraces(axis: Axis, column: number, headings: readonly string[]): 
   if (axis.indexColumn === column)
     return `Column ${column + 1} holds a running number and was left out.`;
   const kind = headings.map(asideNamed).find((found) => found !== null);
-  if (!kind) return null;
+  if (!kind) {
+    // What stands before the wavelengths (a cell's number, say) is no trace unless it says so.
+    const isBefore = column < axis.column && quantityOfColumn(headings) === null;
+    return isBefore
+      ? `Column ${column + 1}${headings[0] ? ` ("${headings[0]}")` : ''} stands before the wavelengths, names no quantity and was left out.`
+      : null;
+  }
   const meaning = kind === 'index' ? 'a running number' : 'times or temperatures';
   return `Column ${column + 1} ("${headings[0]}") holds ${meaning} and was left out.`;
 }

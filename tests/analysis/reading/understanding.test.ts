@@ -1,6 +1,4 @@
 import { describe, expect, it } from 'vitest';
-import { readExport } from '../../../analysis/reading/read-export.ts';
-import { readingToJson } from '../../../analysis/reading/reading-to-json.ts';
 import { onlySpectrum, readText } from './read-text.ts';
 
 const values = (text: string) => Array.from(onlySpectrum(text).absorbance ?? []);
@@ -115,6 +113,7 @@ describe('quantities', () => {
     ['Abs.', 'absorbance'],
     ['AU', 'absorbance'],
     ['A (AU)', 'absorbance'],
+    ['Messwert 1 [AU]', 'absorbance'],
     ['Extinktion', 'absorbance'],
     ['Absorption', 'absorbance'],
     ['E', 'absorbance'],
@@ -196,6 +195,12 @@ describe('the axis', () => {
     }
   });
 
+  it('a number before the wavelengths that names no quantity is left out and told', () => {
+    const spectrum = onlySpectrum('Cell;Wavelength (nm);A\n1;400;0.5\n1;401;0.6\n');
+    expect(Array.from(spectrum.absorbance ?? [])).toEqual([0.5, 0.6]);
+    expect(spectrum.assumptions.join()).toContain('"Cell"');
+  });
+
   it('a time column beside the traces is left out and told', () => {
     const spectrum = onlySpectrum('nm;Time (s);A\n400;0.1;0.5\n401;0.2;0.6\n');
     expect(Array.from(spectrum.absorbance ?? [])).toEqual([0.5, 0.6]);
@@ -249,60 +254,5 @@ describe('what stands around the data', () => {
   it('a heading in one piece above columns of blanks still names axis and quantity', () => {
     const spectrum = onlySpectrum('Wavelength nm Transmittance in %\n400 10\n401 100\n');
     expect(spectrum.quantity).toBe('percent-transmittance');
-  });
-});
-
-describe('a file that was cut', () => {
-  const whole = 'nm;A;B\n400;0.1111;0.2222\n401;0.1111;0.2222\n402;0.1111;0.2222';
-
-  it('reads the same without its last line end', () => {
-    expect(readText(whole).spectra).toEqual(readText(`${whole}\n`).spectra);
-  });
-
-  it('loses a last number that has lost digits, and says so', () => {
-    const [, second] = readText(whole.slice(0, -1)).spectra;
-    expect(Array.from(second?.absorbance ?? [])).toEqual([0.2222, 0.2222, Number.NaN]);
-    expect(second?.assumptions.join()).toContain('the file seems to have been cut');
-  });
-
-  it('loses a last line that stops half way, and says so', () => {
-    const [first] = readText(whole.slice(0, -7)).spectra;
-    expect(first?.points).toBe(2);
-    expect(first?.assumptions.join()).toContain('Line 4, the last, stops half way');
-  });
-});
-
-describe('a reading', () => {
-  it('knows bytes and encoding whatever the file is called', () => {
-    const bytes = new TextEncoder().encode('nm;A\n400;0.1\n401;0.2\n');
-    const reading = readExport(bytes, 'photo.png');
-    expect(reading.spectra.length).toBe(1);
-    // sha256sum of these bytes, by coreutils.
-    expect(reading.sha256).toBe('fa1ecc5e7a5ade7eba789cfc7ceb0a82b05f9809fb3875d0803929a14ee64188');
-  });
-
-  it('as JSON has the members of the contract in its order, null for missing points', () => {
-    const json = readingToJson(readText('nm;A;mAU\n401;0.1;5\n400;OVER;6\n'));
-    const text = JSON.stringify(json);
-    expect(JSON.parse(text)).toMatchObject({
-      format: 'monobis-reading',
-      version: 1,
-      spectra: [{ wavelengthNm: [400, 401], absorbance: [null, 0.1], points: 2, xUnit: 'nm' }],
-      refused: [{ what: 'trace 2 ("mAU")', line: null }],
-    });
-    expect(Object.keys(json)).toEqual([
-      'format',
-      'version',
-      'file',
-      'sha256',
-      'encoding',
-      'delimiter',
-      'decimal',
-      'spectra',
-      'refused',
-    ]);
-    expect(text).toContain(
-      '"name":"A","xUnit":"nm","quantity":"absorbance","points":2,"wavelengthNm"',
-    );
   });
 });

@@ -37,7 +37,7 @@ export interface PrintedSpectra {
 }
 
 /** What is printed for missing points, one after the other. */
-export const marks = ['OVER', '****', '--', 'inf', 'NaN', 'n/a', '>4.0', 'over range'] as const;
+const marks = ['OVER', '****', '--', 'inf', 'NaN', 'n/a', '>4.0', 'over range'] as const;
 
 const signs = { comma: ',', semicolon: ';', tab: '\t', space: '  ' } as const;
 
