@@ -134,10 +134,13 @@ function download(text: string, name: string, type: string): void {
   setTimeout(() => URL.revokeObjectURL(url), 10_000);
 }
 
-/** Opens the report in a window of its own and its print dialog, where "save as PDF" is. */
+/**
+ * Shows the report in a window of its own with its print dialog, where "save as PDF" is. The page's
+ * policy holds there too and allows no style element, so that the report's style goes in as a
+ * constructed sheet.
+ */
 function printPage(html: string): void {
-  const url = URL.createObjectURL(new Blob([html], { type: 'text/html;charset=utf-8' }));
-  const page = window.open(url, '_blank');
+  const page = window.open('', '_blank');
   if (!page) {
     throw new Refusal({
       code: 'window-blocked',
@@ -145,5 +148,11 @@ function printPage(html: string): void {
       mend: 'Allow windows for this page, or export the report as HTML and print that.',
     });
   }
-  page.addEventListener('load', () => page.print());
+  const report = new DOMParser().parseFromString(html, 'text/html');
+  const style = new (page as Window & typeof globalThis).CSSStyleSheet();
+  style.replaceSync(report.querySelector('style')?.textContent ?? '');
+  page.document.adoptedStyleSheets = [style];
+  page.document.title = report.title;
+  page.document.body.replaceWith(page.document.importNode(report.body, true));
+  page.print();
 }

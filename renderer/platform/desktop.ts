@@ -6,10 +6,10 @@ import type { Platform } from './platform.ts';
 export function desktopPlatform(api: DesktopApi): Platform {
   return {
     kind: 'desktop',
-    openSheet: async () => valueOf(await api.openSheet()),
-    openExports: async () => valueOf(await api.openExports()),
+    openSheet: async () => unwrapped(await api.openSheet()),
+    openExports: async () => unwrapped(await api.openExports()),
     saveSheet: async (text, handle, suggestedName) =>
-      valueOf(
+      unwrapped(
         await api.saveSheet({
           text,
           handle: typeof handle === 'string' ? handle : null,
@@ -17,8 +17,9 @@ export function desktopPlatform(api: DesktopApi): Platform {
         }),
       ),
     exportText: async (text, suggestedName, kind) =>
-      valueOf(await api.exportText({ text, suggestedName, kind })),
-    exportPdf: async (html, suggestedName) => valueOf(await api.exportPdf({ html, suggestedName })),
+      unwrapped(await api.exportText({ text, suggestedName, kind })),
+    exportPdf: async (html, suggestedName) =>
+      unwrapped(await api.exportPdf({ html, suggestedName })),
     onCommand: (listener) => {
       api.onCommand(listener);
     },
@@ -32,7 +33,7 @@ export function desktopPlatform(api: DesktopApi): Platform {
   };
 }
 
-function valueOf<T>(answer: Answer<T>): T {
+function unwrapped<T>(answer: Answer<T>): T {
   if (answer.ok) return answer.value;
   throw new Refusal(answer.refusal);
 }

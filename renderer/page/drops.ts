@@ -1,0 +1,46 @@
+import { signal } from '@preact/signals';
+import { addExports, type Destination } from '../import/imports.ts';
+import { opened, sheetSource } from '../platform/browser.ts';
+import { attempt } from '../state/notices.ts';
+import { isOpen, isUnsaved } from '../state/store.ts';
+import { openSource, run, takeAwaited } from './actions.ts';
+import { confirmLoss } from './confirm-loss.ts';
+
+/** True while files hang over the page. */
+export const isDragging = signal(false);
+
+/** Files may be dropped anywhere; where they fall says what they are. */
+export function startTakingDrops(): void {
+  let leaving: ReturnType<typeof setTimeout> | undefined;
+  window.addEventListener('dragover', (event) => {
+    if (!event.dataTransfer?.types.includes('Files')) return;
+    event.preventDefault();
+    event.dataTransfer.dropEffect = 'copy';
+    isDragging.value = true;
+    clearTimeout(leaving);
+    // no event says for sure that a drag has left the window
+    leaving = setTimeout(() => {
+      isDragging.value = false;
+    }, 300);
+  });
+  window.addEventListener('drop', (event) => {
+    event.preventDefault();
+    isDragging.value = false;
+    const files = [...(event.dataTransfer?.files ?? [])];
+    const section = event.target instanceof Element ? event.target.closest('[data-takes]') : null;
+    const takes = section?.getAttribute('data-takes');
+    const destination = takes === 'standards' || takes === 'aliquots' ? takes : null;
+    void attempt(() => dropped(files, destination));
+  });
+}
+
+async function dropped(files: readonly File[], destination: Destination | null): Promise<void> {
+  const sheetFile = files.find(({ name }) => name.toLowerCase().endsWith('.json'));
+  const rest = files.filter((file) => file !== sheetFile);
+  if (sheetFile) {
+    if (isUnsaved.value && !(await confirmLoss())) return;
+    await openSource(await sheetSource(sheetFile));
+  } else if (!isOpen.value) run('new-sheet');
+  const exports = await Promise.all(rest.map(opened));
+  await addExports(await takeAwaited(exports), destination);
+}

@@ -1,0 +1,62 @@
+import { useState } from 'preact/hooks';
+import { cancelReading, reading } from '../import/imports.ts';
+import { dismiss, type Notice, notices } from '../state/notices.ts';
+
+/** What the program has to tell, until it is dismissed. */
+export function Notices() {
+  const progress = reading.value;
+  return (
+    <div class="notices">
+      {progress && (
+        <div class="notice" role="status">
+          <p>
+            Reading {progress.done} of {progress.of} files …{' '}
+            <progress max={progress.of} value={progress.done} aria-label="Files read" />
+          </p>
+          <button type="button" class="quiet" onClick={cancelReading}>
+            Stop
+          </button>
+        </div>
+      )}
+      {notices.value.map((notice) => (
+        <NoticeCard key={notice.id} notice={notice} />
+      ))}
+    </div>
+  );
+}
+
+const fewLines = 4;
+
+function NoticeCard({ notice }: { readonly notice: Notice }) {
+  const { id, kind, text, details = [] } = notice;
+  const [isWhole, setWhole] = useState(false);
+  const lines = isWhole ? details : details.slice(0, fewLines);
+  return (
+    <div class={`notice notice-${kind}`} role={kind === 'news' ? 'status' : 'alert'}>
+      <div>
+        <p>{text}</p>
+        {lines.length > 0 && (
+          <ul>
+            {lines.map((line, index) => (
+              // lines may be alike, and never change their order
+              <li key={index}>{line}</li>
+            ))}
+          </ul>
+        )}
+        {details.length > fewLines && (
+          <button
+            type="button"
+            class="quiet"
+            aria-expanded={isWhole}
+            onClick={() => setWhole(!isWhole)}
+          >
+            {isWhole ? 'Show less' : `Show all ${details.length} lines`}
+          </button>
+        )}
+      </div>
+      <button type="button" class="remove" aria-label="Dismiss" onClick={() => dismiss(id)}>
+        ×
+      </button>
+    </div>
+  );
+}

@@ -1,0 +1,43 @@
+import type { Config, Data, Layout, PlotlyHTMLElement } from 'plotly.js-dist-min';
+
+/**
+ * The one place where plots are made. Plotly is large: it is loaded after first paint. By default it
+ * offers to send a chart to its makers' server; nothing here may (a test holds it to that).
+ */
+export const plotConfig: Partial<Config> = {
+  displayModeBar: false,
+  showSendToCloud: false,
+  plotlyServerURL: '',
+  displaylogo: false,
+  showTips: false,
+  responsive: false,
+  doubleClick: 'reset',
+};
+
+type Plotly = typeof import('plotly.js-dist-min').default;
+
+let loading: Promise<Plotly> | null = null;
+
+function plotly(): Promise<Plotly> {
+  loading ??= import('plotly.js-dist-min').then((module) => module.default);
+  return loading;
+}
+
+/** Draws, or draws anew; arrays must be new ones where they changed. */
+export async function draw(
+  element: HTMLElement,
+  data: Data[],
+  layout: Partial<Layout>,
+): Promise<PlotlyHTMLElement> {
+  return (await plotly()).react(element, data, layout, plotConfig);
+}
+
+export async function clear(element: HTMLElement): Promise<void> {
+  if (loading) (await loading).purge(element);
+}
+
+/** The plot as a file of its own. */
+export async function imageOf(element: HTMLElement, format: 'svg' | 'png'): Promise<string> {
+  const size = { width: element.clientWidth, height: element.clientHeight };
+  return (await plotly()).toImage(element, { format, ...size, scale: format === 'png' ? 2 : 1 });
+}

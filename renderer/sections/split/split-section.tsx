@@ -1,0 +1,244 @@
+import {
+  type AliquotResult,
+  figuresText,
+  type Quantified,
+  quantifiedText,
+  type RunResult,
+  type Sheet,
+  type SplitFraction,
+  speciesName,
+} from '../../../analysis/index.ts';
+import { lookClass, SpeciesGlyph } from '../../species/species-glyph.tsx';
+import type { SectionProps } from '../section.ts';
+import { adviceFor, answerText } from './answer.ts';
+import { doubtTitles } from './doubt-titles.ts';
+
+function resultOf({ quantification, aliquot }: SectionProps): AliquotResult | undefined {
+  return quantification?.results.aliquots.find((each) => each.aliquot === aliquot);
+}
+
+export function splitSummary(props: SectionProps): string {
+  const result = resultOf(props);
+  const answer = result && answerText(props.sheet, result);
+  return answer ? `${answer.head} (${answer.interval})` : 'no answer yet';
+}
+
+export function SplitSection(props: SectionProps) {
+  const { sheet, quantification, obstacle } = props;
+  const result = resultOf(props);
+  if (!result) {
+    return (
+      <p class="empty">
+        {obstacle ?? 'The answer appears here once standards and a crude spectrum are in.'}
+      </p>
+    );
+  }
+  const run = quantification?.results.runs.find((each) => each.run === result.run);
+  return (
+    <>
+      <Answer sheet={sheet} title={`Aliquot ${result.aliquot}`} answer={result} />
+      <SplitBar sheet={sheet} split={result.split} />
+      {run && run.aliquots > 1 && <RunAnswer sheet={sheet} run={run} />}
+      <Ledger sheet={sheet} result={result} />
+      <Doubts sheet={sheet} result={result} />
+      <Budget result={result} />
+    </>
+  );
+}
+
+type AnswerProps = {
+  readonly sheet: Sheet;
+  readonly title: string;
+  readonly answer: Pick<AliquotResult, 'split' | 'ratios'>;
+};
+
+function Answer({ sheet, title, answer }: AnswerProps) {
+  const text = answerText(sheet, answer);
+  if (!text) return null;
+  return (
+    <div class="answer" aria-live="polite">
+      <p class="answer-of">{title}</p>
+      <p class="answer-head">{text.head}</p>
+      <p class="answer-interval">{text.interval}</p>
+    </div>
+  );
+}
+
+function RunAnswer({ sheet, run }: { readonly sheet: Sheet; readonly run: RunResult }) {
+  const text = answerText(sheet, run);
+  const name = sheet.runs?.find(({ id }) => id === run.run)?.name || run.run;
+  const { coresFound, armsFound } = run.balance;
+  const share = (found: Quantified): string => {
+    const { value, interval } = quantifiedText(found, { unit: 'percent' });
+    return `${value} % (${interval})`;
+  };
+  return (
+    <div class="run-answer">
+      {text && (
+        <p>
+          <strong>Run {name}</strong>, {run.aliquots} aliquots together: {text.head}{' '}
+          <span class="soft">({text.interval})</span>
+        </p>
+      )}
+      {(coresFound || armsFound) && (
+        <p class="soft">
+          Of what was charged the spectrum finds
+          {coresFound && ` ${share(coresFound)} of the cores`}
+          {coresFound && armsFound && ' and'}
+          {armsFound && ` ${share(armsFound)} of the arms`}. What does not absorb is not seen.
+        </p>
+      )}
+    </div>
+  );
+}
+
+/** The split as a bar, labelled on itself. */
+export function SplitBar({
+  sheet,
+  split,
+}: {
+  readonly sheet: Sheet;
+  readonly split: readonly SplitFraction[];
+}) {
+  return (
+    <div class="split-bar">
+      {split.map(({ species, fraction }) => {
+        const share = fraction.value ?? 0;
+        const { value } = quantifiedText(fraction, { unit: 'percent' });
+        return (
+          <div
+            key={species}
+            class={`split-part ${lookClass(sheet, species)}`}
+            style={{ flexGrow: Math.max(share, 0.0001) }}
+          >
+            <span class="split-fill" />
+            <span class="split-label">
+              {speciesName(sheet, species)} {value} %
+            </span>
+          </div>
+        );
+      })}
+    </div>
+  );
+}
+
+function Ledger({ sheet, result }: { readonly sheet: Sheet; readonly result: AliquotResult }) {
+  return (
+    <table class="ledger">
+      <thead>
+        <tr>
+          <th scope="col">Species</th>
+          <th scope="col" class="number">
+            cuvette, µmol/L
+          </th>
+          <th scope="col" class="interval">
+            95 %
+          </th>
+          <th scope="col" class="number">
+            flask, mmol/L
+          </th>
+          <th scope="col" class="interval">
+            95 %
+          </th>
+          <th scope="col" class="number">
+            of products, %
+          </th>
+          <th scope="col" class="interval">
+            95 %
+          </th>
+        </tr>
+      </thead>
+      <tbody>
+        {result.concentrations.map(({ species, cuvetteMolPerL, flaskMolPerL, detected }) => {
+          const fraction = result.split.find((each) => each.species === species)?.fraction;
+          const cuvette = quantifiedText(cuvetteMolPerL, { unit: 'micromolar' });
+          const flask = quantifiedText(flaskMolPerL, { unit: 'millimolar' });
+          const share = fraction && quantifiedText(fraction, { unit: 'percent' });
+          return (
+            <tr key={species}>
+              <th scope="row">
+                <span class="with-glyph">
+                  <SpeciesGlyph sheet={sheet} id={species} />
+                  <span>
+                    {speciesName(sheet, species)}
+                    {!detected && <span class="undetected"> below detection</span>}
+                  </span>
+                </span>
+              </th>
+              <td class="number">{detected ? cuvette.value : '—'}</td>
+              <td class="interval">{cuvette.interval}</td>
+              <td class="number">{detected ? flask.value : '—'}</td>
+              <td class="interval">{flask.interval}</td>
+              <td class="number">{share ? share.value : ''}</td>
+              <td class="interval">{share ? share.interval : ''}</td>
+            </tr>
+          );
+        })}
+      </tbody>
+    </table>
+  );
+}
+
+function Doubts({ sheet, result }: { readonly sheet: Sheet; readonly result: AliquotResult }) {
+  const { doubts, notes } = result;
+  return (
+    <div class="doubts">
+      <h3>Doubts</h3>
+      {doubts.length === 0 ? (
+        <p class="soft">
+          None was raised. The interval holds as far as the sheet's own uncertainties do.
+        </p>
+      ) : (
+        <ol>
+          {doubts.map(({ code, message, species = [] }) => (
+            <li key={`${code}-${species.join()}`} class="doubt">
+              <strong>{doubtTitles[code]}</strong>
+              {species.length > 0 && (
+                <span class="soft">
+                  {' '}
+                  · {species.map((id) => speciesName(sheet, id)).join(', ')}
+                </span>
+              )}
+              <p>{message}</p>
+            </li>
+          ))}
+        </ol>
+      )}
+      {notes.map((note) => (
+        <p class="soft" key={note}>
+          {note}
+        </p>
+      ))}
+    </div>
+  );
+}
+
+const smallestShare = 0.005;
+
+function Budget({ result }: { readonly result: AliquotResult }) {
+  const [largest] = result.budget;
+  if (!largest) return null;
+  const shown = result.budget.filter(({ share }) => share >= smallestShare);
+  const [product] = result.split;
+  return (
+    <div class="budget">
+      <h3>What the uncertainty is made of</h3>
+      <p class="soft">
+        Shares of the variance of the first product's fraction
+        {product ? ` (${product.species})` : ''}. Most comes from {largest.source}.{' '}
+        {adviceFor(largest.source)}
+      </p>
+      <ul>
+        {shown.map(({ source, share }) => (
+          <li key={source}>
+            <span class="budget-name">{source}</span>
+            <span class="budget-bar">
+              <span style={{ width: `${100 * share}%` }} />
+            </span>
+            <span class="budget-share">{figuresText(100 * share)} %</span>
+          </li>
+        ))}
+      </ul>
+    </div>
+  );
+}

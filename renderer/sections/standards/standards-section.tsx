@@ -1,0 +1,261 @@
+import {
+  absorbingSpecies,
+  addStockFor,
+  removeStandard,
+  removeStock,
+  type SheetStandard,
+  speciesName,
+  updateStandard,
+  updateStock,
+} from '../../../analysis/index.ts';
+import { Choice, Field } from '../../fields/field.tsx';
+import {
+  parseConcentration,
+  parsePercent,
+  parsePositive,
+  shown,
+} from '../../fields/parse-entry.ts';
+import { StandardsPlot } from '../../plots/standards-plot.tsx';
+import { SpeciesGlyph } from '../../species/species-glyph.tsx';
+import type { SectionProps } from '../section.ts';
+
+export function standardsSummary({ sheet }: SectionProps): string {
+  const standards = sheet.standards ?? [];
+  const species = new Set(standards.map((standard) => standard.species));
+  return `${standards.length} standards of ${species.size} species`;
+}
+
+export function standardsNeeds({ sheet }: SectionProps): string | null {
+  const standards = sheet.standards ?? [];
+  const missing = absorbingSpecies(sheet).filter(
+    ({ id }) => !standards.some(({ species }) => species === id),
+  );
+  if (missing.length > 0)
+    return `a standard of ${missing.map(({ id }) => speciesName(sheet, id)).join(', ')}`;
+  const open = standards.filter(
+    ({ kind, concentrationMolPerL }) =>
+      kind !== 'molar-absorptivity' && concentrationMolPerL === undefined,
+  );
+  return open.length > 0 ? `the concentration of ${open.map(({ id }) => id).join(', ')}` : null;
+}
+
+const newStock = '\u0000new';
+
+export function StandardsSection(props: SectionProps) {
+  const { sheet, quantification, change } = props;
+  const standards = sheet.standards ?? [];
+  const stocks = sheet.stocks ?? [];
+  if (standards.length === 0) {
+    return (
+      <p class="empty">
+        Drop the exports of the pure standards here. Each trace becomes one line; then type its
+        concentration.
+      </p>
+    );
+  }
+  return (
+    <>
+      <table class="ledger">
+        <thead>
+          <tr>
+            <th scope="col">Standard</th>
+            <th scope="col">of</th>
+            <th scope="col">from stock</th>
+            <th scope="col" class="number">
+              concentration, µmol/L
+            </th>
+            <th
+              scope="col"
+              class="number"
+              title="Relative standard uncertainty of this solution alone"
+            >
+              u, %
+            </th>
+            <th scope="col" class="number">
+              path, cm
+            </th>
+            <th scope="col">
+              <span class="unseen">Remove</span>
+            </th>
+          </tr>
+        </thead>
+        <tbody>
+          {standards.map((standard) => (
+            <StandardRow key={standard.id} {...props} standard={standard} />
+          ))}
+        </tbody>
+      </table>
+      {stocks.length > 0 && (
+        <table class="ledger narrow">
+          <caption>Stocks: an error common to all standards made from one</caption>
+          <thead>
+            <tr>
+              <th scope="col">Stock</th>
+              <th scope="col">of</th>
+              <th scope="col" class="number">
+                u, %
+              </th>
+              <th scope="col">
+                <span class="unseen">Remove</span>
+              </th>
+            </tr>
+          </thead>
+          <tbody>
+            {stocks.map(({ id, species, relativeStandardUncertainty }) => (
+              <tr key={id}>
+                <td>{id}</td>
+                <td>{speciesName(sheet, species)}</td>
+                <td class="number">
+                  <Field
+                    label={`Relative standard uncertainty of stock ${id} in %`}
+                    align="right"
+                    value={shown(relativeStandardUncertainty, 100)}
+                    placeholder="not given"
+                    commit={(text) => {
+                      const entry = parsePercent(text);
+                      if (!entry.ok) return entry.message;
+                      const { value } = entry;
+                      change('set stock uncertainty', (before) =>
+                        updateStock(before, id, { relativeStandardUncertainty: value }),
+                      );
+                      return null;
+                    }}
+                  />
+                </td>
+                <td>
+                  <button
+                    type="button"
+                    class="remove"
+                    aria-label={`Remove stock ${id}`}
+                    onClick={() =>
+                      change(`remove stock ${id}`, (before) => removeStock(before, id))
+                    }
+                  >
+                    ×
+                  </button>
+                </td>
+              </tr>
+            ))}
+          </tbody>
+        </table>
+      )}
+      {quantification && quantification.standards.length > 0 && (
+        <StandardsPlot standards={quantification.standards} sheet={sheet} />
+      )}
+    </>
+  );
+}
+
+function StandardRow({
+  sheet,
+  change,
+  standard,
+}: SectionProps & { readonly standard: SheetStandard }) {
+  const { id, species, stock, spectrum, kind } = standard;
+  const isEpsilon = kind === 'molar-absorptivity';
+  const set = (label: string, changes: Parameters<typeof updateStandard>[2]): void =>
+    change(label, (before) => updateStandard(before, id, changes));
+  const name = spectrum.embedded?.name ?? spectrum.file ?? id;
+  const stocks = (sheet.stocks ?? []).filter((each) => each.species === species);
+  return (
+    <tr>
+      <td>
+        <span class="with-glyph">
+          <SpeciesGlyph sheet={sheet} id={species} />
+          <span>
+            {id}{' '}
+            <span class="soft source">{sourceName(spectrum.embedded?.source?.file, name)}</span>
+          </span>
+        </span>
+      </td>
+      <td>
+        <Choice
+          label={`Species of ${id}`}
+          value={species}
+          options={sheet.species.map((each) => ({ value: each.id, text: each.name || each.id }))}
+          choose={(next) => set('set species of standard', { species: next })}
+        />
+      </td>
+      <td>
+        <Choice
+          label={`Stock of ${id}`}
+          value={stock ?? ''}
+          options={[
+            { value: '', text: '—' },
+            ...stocks.map((each) => ({ value: each.id, text: each.id })),
+            { value: newStock, text: 'a new stock' },
+          ]}
+          choose={(next) => {
+            if (next === newStock) change('add stock', (before) => addStockFor(before, id));
+            else set('set stock', { stock: next === '' ? undefined : next });
+          }}
+        />
+      </td>
+      <td class="number">
+        {isEpsilon ? (
+          <span class="soft">already ε</span>
+        ) : (
+          <Field
+            label={`Concentration of ${id}`}
+            align="right"
+            isNeeded
+            placeholder="needed"
+            title="A bare number is in µmol/L; or type a unit: 25 µM, 2.5e-5 M"
+            value={shown(standard.concentrationMolPerL, 1e6)}
+            commit={(text) => {
+              const entry = parseConcentration(text);
+              if (!entry.ok) return entry.message;
+              set('set concentration', { concentrationMolPerL: entry.value });
+              return null;
+            }}
+          />
+        )}
+      </td>
+      <td class="number">
+        <Field
+          label={`Relative standard uncertainty of ${id} in %`}
+          align="right"
+          placeholder="not given"
+          value={shown(standard.relativeStandardUncertainty, 100)}
+          commit={(text) => {
+            const entry = parsePercent(text);
+            if (!entry.ok) return entry.message;
+            set('set uncertainty', { relativeStandardUncertainty: entry.value });
+            return null;
+          }}
+        />
+      </td>
+      <td class="number">
+        <Field
+          label={`Path length of ${id} in cm`}
+          align="right"
+          placeholder="1"
+          value={shown(standard.pathLengthCm)}
+          commit={(text) => {
+            const entry = parsePositive(text);
+            if (!entry.ok) return entry.message;
+            set('set path length', { pathLengthCm: entry.value });
+            return null;
+          }}
+        />
+      </td>
+      <td>
+        <button
+          type="button"
+          class="remove"
+          aria-label={`Remove standard ${id}`}
+          onClick={() => change(`remove standard ${id}`, (before) => removeStandard(before, id))}
+        >
+          ×
+        </button>
+      </td>
+    </tr>
+  );
+}
+
+/** "bis.csv, trace name": the file where it is known, and the trace's own name where it says more. */
+export function sourceName(file: string | undefined, name: string): string {
+  if (file === undefined) return name;
+  const last = file.split(/[\\/]/).at(-1) ?? file;
+  return name === '' || last.startsWith(name) ? last : `${last}, ${name}`;
+}
