@@ -9,6 +9,7 @@ export { readingToJson } from './reading/reading-to-json.ts';
 export { type SheetSource, sheetSources } from './reading/sheet-sources.ts';
 export { tooLargeReading } from './reading/too-large.ts';
 export { Refusal, type RefusalText, refusalSentence, type Where } from './refusal.ts';
+export { labelSpot } from './report/label-spot.ts';
 export {
   figuresText,
   numberText,
@@ -19,9 +20,16 @@ export {
 export { reportCsv } from './report/report-csv.ts';
 export { type ReportOptions, reportHtml } from './report/report-html.ts';
 export { resultsJson } from './report/results-json.ts';
+export { type AnswerText, answerText } from './report/sections/answer.ts';
 export { speciesGlyph } from './report/species-glyph.ts';
 export { type SpeciesLook, speciesLook } from './report/species-look.ts';
-export { absorbingSpecies, fitSettings, productSpecies, speciesName } from './sheet/defaults.ts';
+export {
+  absorbingSpecies,
+  fitSettings,
+  productSpecies,
+  speciesLabel,
+  speciesName,
+} from './sheet/defaults.ts';
 export {
   addAliquots,
   addRun,

@@ -36,3 +36,11 @@ export function productSpecies(sheet: Sheet): readonly SheetSpecies[] {
 export function speciesName(sheet: Sheet, id: string): string {
   return sheet.species.find((species) => species.id === id)?.name || id;
 }
+
+const longestLabel = 18;
+
+/** A short name for where there is little room (answers, labels on curves): the name if it is short, else the id. */
+export function speciesLabel(sheet: Sheet, id: string): string {
+  const name = speciesName(sheet, id);
+  return name.length <= longestLabel ? name : id;
+}

@@ -2,10 +2,11 @@ import type { Annotation, Dash, Data, Layout, Shape } from 'plotly.js-dist-min';
 import {
   type AliquotCurves,
   type Doubt,
+  labelSpot,
   leftOut,
   type Sheet,
+  speciesLabel,
   speciesLook,
-  speciesName,
 } from '../../analysis/index.ts';
 import type { PlotTheme } from './theme.ts';
 
@@ -61,7 +62,7 @@ function stack({ sheet, curves, theme }: FitFigureInput): Data[] {
       fill: 'tonexty',
       fillcolor: `${colour}2e`,
       line: { width: 1.4, color: colour, dash: dashOf(k) },
-      name: speciesName(sheet, species),
+      name: speciesLabel(sheet, species),
       customdata: absorbance,
       hovertemplate: '%{customdata:.4f}',
     };
@@ -79,7 +80,7 @@ function curvesOf({ curves, theme }: FitFigureInput): Data[] {
       mode: 'lines',
       x,
       y: fitted.map((value, i) => (use[i] === leftOut.used ? value : Number.NaN)),
-      line: { width: 1.6, color: theme.ink },
+      line: { width: 1.2, color: theme.ink },
       name: 'fitted',
       hovertemplate: '%{y:.4f}',
     },
@@ -97,7 +98,7 @@ function curvesOf({ curves, theme }: FitFigureInput): Data[] {
       mode: 'markers',
       x,
       y: where((reason) => reason === leftOut.used),
-      marker: { size: 3.4, color: theme.ink, line: { width: 0.8, color: theme.paper } },
+      marker: { size: 4, color: theme.paper, line: { width: 1.1, color: theme.ink } },
       name: 'measured',
       hovertemplate: '%{y:.4f}',
     },
@@ -304,7 +305,7 @@ function directLabels({ sheet, curves, theme, rangeNm }: FitFigureInput): Partia
         y: spot.y,
         xref: 'x' as const,
         yref: 'y' as const,
-        text: speciesName(sheet, species),
+        text: speciesLabel(sheet, species),
         showarrow: isThin,
         arrowhead: 0,
         arrowwidth: 1,
@@ -317,36 +318,6 @@ function directLabels({ sheet, curves, theme, rangeNm }: FitFigureInput): Partia
       },
     ];
   });
-}
-
-/** Middle of the layer at the wavelength where it is thickest, away from labels that are there. */
-export function labelSpot(
-  curves: Pick<AliquotCurves, 'wavelengthNm' | 'baseline' | 'contributions' | 'use'>,
-  layer: number,
-  [low, high]: readonly [number, number],
-  top: number,
-  placed: readonly { readonly x: number; readonly y: number }[],
-): { readonly x: number; readonly y: number; readonly index: number } | null {
-  const span = high - low;
-  let best: { x: number; y: number; index: number } | null = null;
-  let bestScore = 0;
-  for (const [index, x] of curves.wavelengthNm.entries()) {
-    if (x < low + 0.08 * span || x > high - 0.12 * span) continue;
-    const thickness = curves.contributions[layer]?.absorbance[index] ?? 0;
-    let below = curves.baseline[index] ?? 0;
-    for (let k = 0; k < layer; k++) below += curves.contributions[k]?.absorbance[index] ?? 0;
-    const y = below + thickness / 2;
-    if (!(y < top) || curves.use[index] !== leftOut.used) continue;
-    const crowd = placed.some(
-      (spot) => Math.abs(spot.x - x) < 0.22 * span && Math.abs(spot.y - y) < 0.075 * top,
-    );
-    const score = thickness * (crowd ? 0.2 : 1);
-    if (score > bestScore) {
-      bestScore = score;
-      best = { x, y, index };
-    }
-  }
-  return best;
 }
 
 const dashes: readonly Dash[] = ['solid', 'dash', 'dot', 'dashdot', 'longdash', 'longdashdot'];

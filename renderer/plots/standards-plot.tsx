@@ -4,8 +4,8 @@ import {
   numberText,
   type Sheet,
   type StandardCurves,
+  speciesLabel,
   speciesLook,
-  speciesName,
 } from '../../analysis/index.ts';
 import { dashOf } from './fit-figure.ts';
 import { PlotFrame } from './plot-frame.tsx';
@@ -65,7 +65,7 @@ export function standardsFigure(
       x: wavelengthNm,
       y: molarAbsorptivity,
       line: { width: 1.8, color: colourOf(k), dash: dashOf(k) },
-      name: speciesName(sheet, species),
+      name: speciesLabel(sheet, species),
       hovertemplate: '%{y:.0f}',
     }),
   );
@@ -126,7 +126,7 @@ function peakLabels(
       {
         x: wavelengthNm[best] ?? 0,
         y: molarAbsorptivity[best] ?? 0,
-        text: speciesName(sheet, species),
+        text: speciesLabel(sheet, species),
         showarrow: false,
         yshift: 10,
         bgcolor: `${theme.paper}b3`,
@@ -155,7 +155,7 @@ function StandardsTable({ standards, sheet }: StandardsPlotProps) {
             .filter((i) => i % every === 0)
             .map((i) => (
               <tr key={`${species}-${i}`}>
-                <td>{speciesName(sheet, species)}</td>
+                <td>{speciesLabel(sheet, species)}</td>
                 <td>{wavelengthNm[i]}</td>
                 <td>{numberText(molarAbsorptivity[i] ?? Number.NaN, 0)}</td>
                 <td>{numberText(noiseSd[i] ?? Number.NaN, 1)}</td>

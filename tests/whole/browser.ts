@@ -1,4 +1,4 @@
-import { existsSync, mkdtempSync } from 'node:fs';
+import { existsSync, mkdtempSync, writeFileSync } from 'node:fs';
 import { tmpdir } from 'node:os';
 import path from 'node:path';
 import { type Browser, chromium } from 'playwright-core';
@@ -61,12 +61,31 @@ async function packagedBrowser(): Promise<string> {
   // without this it does not unpack the libraries that a bare machine lacks
   process.env.AWS_LAMBDA_JS_RUNTIME = 'nodejs20.x';
   const before = process.env.TMPDIR;
-  process.env.TMPDIR = mkdtempSync(path.join(tmpdir(), 'monobis-browser-'));
+  const own = mkdtempSync(path.join(tmpdir(), 'monobis-browser-'));
+  process.env.TMPDIR = own;
   try {
     const { default: packaged } = await import('@sparticuz/chromium');
-    return await packaged.executablePath();
+    const executable = await packaged.executablePath();
+    writeFontSettings(own);
+    return executable;
   } finally {
     if (before === undefined) delete process.env.TMPDIR;
     else process.env.TMPDIR = before;
   }
+}
+
+/**
+ * Its own font settings look in /tmp/fonts only: with another TMPDIR it finds no font at all and
+ * stops at the first text field.
+ */
+function writeFontSettings(folder: string): void {
+  const folders = [path.join(folder, 'fonts'), '/usr/share/fonts'];
+  const settings = `<?xml version="1.0"?>
+<!DOCTYPE fontconfig SYSTEM "fonts.dtd">
+<fontconfig>
+${folders.map((each) => `  <dir>${each}</dir>`).join('\n')}
+  <cachedir>${path.join(folder, 'font-cache')}</cachedir>
+</fontconfig>
+`;
+  writeFileSync(path.join(folder, 'fonts/fonts.conf'), settings);
 }

@@ -221,7 +221,7 @@ function RunsTable({ sheet, change, runs }: SectionProps & { readonly runs: read
           };
           return (
             <tr key={id}>
-              <td>
+              <td class="wide">
                 <Field
                   label={`Name of run ${id}`}
                   value={name}

@@ -1,4 +1,4 @@
-import { quantifiedText, speciesName } from '../../../analysis/index.ts';
+import { quantifiedText, speciesLabel } from '../../../analysis/index.ts';
 import type { SectionProps } from '../section.ts';
 
 export function comparedSummary({ quantification }: SectionProps): string {
@@ -36,7 +36,7 @@ export function ComparedSection({ sheet, quantification }: SectionProps) {
                 {runName(runs[0])} over {runName(runs[1])}
               </th>
               <td>
-                {speciesName(sheet, of)} : {speciesName(sheet, to)}
+                {speciesLabel(sheet, of)} : {speciesLabel(sheet, to)}
               </td>
               <td class="number">{value}</td>
               <td class="interval">{interval}</td>

@@ -1,16 +1,18 @@
 import {
   type AliquotResult,
+  answerText,
   figuresText,
   type Quantified,
   quantifiedText,
   type RunResult,
   type Sheet,
   type SplitFraction,
+  speciesLabel,
   speciesName,
 } from '../../../analysis/index.ts';
 import { lookClass, SpeciesGlyph } from '../../species/species-glyph.tsx';
 import type { SectionProps } from '../section.ts';
-import { adviceFor, answerText } from './answer.ts';
+import { adviceFor } from './advice.ts';
 import { doubtTitles } from './doubt-titles.ts';
 
 function resultOf({ quantification, aliquot }: SectionProps): AliquotResult | undefined {
@@ -41,7 +43,7 @@ export function SplitSection(props: SectionProps) {
       {run && run.aliquots > 1 && <RunAnswer sheet={sheet} run={run} />}
       <Ledger sheet={sheet} result={result} />
       <Doubts sheet={sheet} result={result} />
-      <Budget result={result} />
+      <Budget sheet={sheet} result={result} />
     </>
   );
 }
@@ -113,7 +115,7 @@ export function SplitBar({
           >
             <span class="split-fill" />
             <span class="split-label">
-              {speciesName(sheet, species)} {value} %
+              {speciesLabel(sheet, species)} {value} %
             </span>
           </div>
         );
@@ -215,7 +217,7 @@ function Doubts({ sheet, result }: { readonly sheet: Sheet; readonly result: Ali
 
 const smallestShare = 0.005;
 
-function Budget({ result }: { readonly result: AliquotResult }) {
+function Budget({ sheet, result }: { readonly sheet: Sheet; readonly result: AliquotResult }) {
   const [largest] = result.budget;
   if (!largest) return null;
   const shown = result.budget.filter(({ share }) => share >= smallestShare);
@@ -225,8 +227,8 @@ function Budget({ result }: { readonly result: AliquotResult }) {
       <h3>What the uncertainty is made of</h3>
       <p class="soft">
         Shares of the variance of the first product's fraction
-        {product ? ` (${product.species})` : ''}. Most comes from {largest.source}.{' '}
-        {adviceFor(largest.source)}
+        {product ? ` (${speciesLabel(sheet, product.species)})` : ''}. Most comes from{' '}
+        {largest.source}. {adviceFor(largest.source)}
       </p>
       <ul>
         {shown.map(({ source, share }) => (
