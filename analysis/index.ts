@@ -3,7 +3,7 @@ export { type Doubt, type DoubtCode, doubtCodes } from './doubts/doubt.ts';
 export { programName } from './program.ts';
 export { type PreparedSheet, prepare, quantify, quantifyAliquot } from './quantify.ts';
 export { embeddedFrom } from './reading/embedded.ts';
-export { readExport } from './reading/read-export.ts';
+export { type ReadOptions, readExport } from './reading/read-export.ts';
 export type { Quantity, Reading, ReadSpectrum, RefusedPart } from './reading/reading.ts';
 export { readingToJson } from './reading/reading-to-json.ts';
 export { type SheetSource, sheetSources } from './reading/sheet-sources.ts';
@@ -66,7 +66,7 @@ export type {
   SheetStock,
 } from './sheet/schema.ts';
 export { sheetText } from './sheet/sheet-text.ts';
-export { embedSpectra, filesOf } from './sheet/spectra.ts';
+export { embedSpectra, filesOf, knownOf } from './sheet/spectra.ts';
 export {
   type AliquotCurves,
   type AliquotResult,

@@ -1,9 +1,10 @@
 import type { EmbeddedSpectrum } from '../sheet/schema.ts';
 import type { Reading, ReadSpectrum } from './reading.ts';
+import { traceOf } from './trace-of.ts';
 
 /** A trace of a reading as the sheet embeds it, with where it came from; null if there is no such trace. */
 export function embeddedFrom(reading: Reading, trace: number): EmbeddedSpectrum | null {
-  const spectrum = reading.spectra[trace];
+  const spectrum = traceOf(reading, trace);
   if (!spectrum) return null;
   return {
     name: spectrum.name,

@@ -6,11 +6,17 @@ import type { RawTrace, TracesFound } from './layouts/layout.ts';
 import { layouts } from './layouts/registered.ts';
 import { recogniseOtherText } from './not-an-export.ts';
 import { recogniseBinary } from './not-text.ts';
-import type { Reading, ReadSpectrum, RefusedPart } from './reading.ts';
+import type { Quantity, Reading, ReadSpectrum, RefusedPart } from './reading.ts';
 import { spectrumOfTrace } from './spectrum-of-trace.ts';
 import { splitLines } from './split-lines.ts';
 import type { Table } from './table.ts';
 import { tooLargeReading } from './too-large.ts';
+
+/** What is known of a file from outside it. */
+export interface ReadOptions {
+  /** The quantity of columns that the file does not name: what the sheet says it is. */
+  readonly unnamedIs?: Quantity;
+}
 
 /**
  * Reads one export: bytes -> text -> lines -> table -> layout -> spectra. Never throws for what a
@@ -18,12 +24,12 @@ import { tooLargeReading } from './too-large.ts';
  * show; its extension is not looked at. `sha256` is of the bytes as they are; it is empty for a file
  * above `MAX_EXPORT_BYTES`, of which not one byte is looked at.
  */
-export function readExport(bytes: Uint8Array, file: string): Reading {
+export function readExport(bytes: Uint8Array, file: string, options: ReadOptions = {}): Reading {
   const refused = tooLargeReading(bytes.length, file);
   if (refused) return refused;
   const known = { file, sha256: hex(sha256(bytes)), encoding: '' };
   try {
-    return readBytes(bytes, known);
+    return readBytes(bytes, known, options);
   } catch (error) {
     if (error instanceof Refusal) return refusedWhole(known, error.toText());
     throw error;
@@ -36,7 +42,7 @@ interface Known {
   encoding: string;
 }
 
-function readBytes(bytes: Uint8Array, known: Known): Reading {
+function readBytes(bytes: Uint8Array, known: Known, { unnamedIs }: ReadOptions): Reading {
   if (bytes.length === 0) return refusedWhole(known, emptyFile);
   const binary = recogniseBinary(bytes);
   if (binary) return refusedWhole(known, binary);
@@ -49,7 +55,7 @@ function readBytes(bytes: Uint8Array, known: Known): Reading {
   const cut = decoded.endsInsideCharacter
     ? ['The file ends in the middle of a character: it seems to have been cut.']
     : [];
-  const { spectra, refused } = spectraOf(found, cut);
+  const { spectra, refused } = spectraOf(found, cut, unnamedIs);
   const isRead = spectra.length > 0;
   return {
     format: 'monobis-reading',
@@ -75,11 +81,15 @@ function readLayout(table: Table): TracesFound {
   });
 }
 
-function spectraOf(found: TracesFound, assumptions: readonly string[]) {
+function spectraOf(
+  found: TracesFound,
+  assumptions: readonly string[],
+  unnamedIs: Quantity | undefined,
+) {
   const spectra: ReadSpectrum[] = [];
   const refused: RefusedPart[] = [...found.refused];
   for (const trace of found.traces) {
-    const outcome = trySpectrum(trace);
+    const outcome = trySpectrum(trace, unnamedIs);
     if (outcome instanceof Refusal) {
       const text = outcome.toText();
       // A fault of the shared axis is one fault, however many traces stand on it.
@@ -93,9 +103,9 @@ function spectraOf(found: TracesFound, assumptions: readonly string[]) {
   return { spectra, refused };
 }
 
-function trySpectrum(trace: RawTrace): ReadSpectrum | Refusal {
+function trySpectrum(trace: RawTrace, unnamedIs: Quantity | undefined): ReadSpectrum | Refusal {
   try {
-    return spectrumOfTrace(trace);
+    return spectrumOfTrace(trace, unnamedIs);
   } catch (error) {
     if (error instanceof Refusal) return error;
     throw error;

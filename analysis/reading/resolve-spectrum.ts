@@ -2,6 +2,7 @@ import { Refusal } from '../refusal.ts';
 import type { SheetSpectrum } from '../sheet/schema.ts';
 import type { Spectrum } from '../spectrum/spectrum.ts';
 import type { Reading, ReadSpectrum } from './reading.ts';
+import { traceOf } from './trace-of.ts';
 
 /** What the owner of a spectrum expects it to hold. */
 export type Wanted = 'absorbance' | 'molar-absorptivity';
@@ -40,7 +41,7 @@ export function resolveSpectrum(
       mend: 'Put it back where the sheet looks for it (the path is relative to the sheet), or load the export again.',
     });
   }
-  const trace = traceOf(reading, spectrum.trace ?? 0, owner);
+  const trace = traceWanted(reading, spectrum.trace ?? 0, owner);
   return {
     name: trace.name,
     wavelengthNm: trace.wavelengthNm,
@@ -48,11 +49,13 @@ export function resolveSpectrum(
   };
 }
 
-function traceOf(reading: Reading, trace: number, owner: string): ReadSpectrum {
-  const spectrum = reading.spectra[trace];
+function traceWanted(reading: Reading, trace: number, owner: string): ReadSpectrum {
+  const spectrum = traceOf(reading, trace);
   if (spectrum) return spectrum;
-  const refused = reading.refused[0];
-  if (reading.spectra.length === 0 && refused) {
+  const refused =
+    reading.refused.find(({ what }) => what.startsWith(`trace ${trace + 1} `)) ??
+    reading.refused[0];
+  if (refused) {
     throw new Refusal({
       code: refused.code,
       message: refused.why,
@@ -87,10 +90,14 @@ function valuesWanted(
       mend: 'For a standard, set its kind to "molar-absorptivity"; an aliquot needs its absorbance.',
     });
   }
-  // the sheet says what it is; a heading that does not is overruled
-  const values = held.molarAbsorptivity ?? held.absorbance;
-  if (!values) throw new Error('a spectrum without values');
-  return values;
+  if (held.molarAbsorptivity) return held.molarAbsorptivity;
+  throw new Refusal({
+    code: 'molar-absorptivity-expected',
+    message:
+      'The sheet says that this spectrum is a molar absorptivity, and the file holds an absorbance or a transmittance.',
+    where,
+    mend: 'Give its concentration and set the kind to "solution", or name the quantity in the heading of the file: "ε (L mol-1 cm-1)".',
+  });
 }
 
 interface Held {

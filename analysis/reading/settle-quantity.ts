@@ -24,7 +24,7 @@ const nameIt =
  * Throws `Refusal` (`other-quantity`, `unnamed-quantity`, `ambiguous-quantity`,
  * `implausible-values`, `ambiguous-number`).
  */
-export function settleQuantity(trace: RawTrace): SettledQuantity {
+export function settleQuantity(trace: RawTrace, unnamedIs?: Quantity): SettledQuantity {
   const { quantity: word } = trace;
   if (word?.kind === 'foreign') {
     throw refusal(
@@ -35,7 +35,7 @@ export function settleQuantity(trace: RawTrace): SettledQuantity {
     );
   }
   const size = sizeOf(trace.y);
-  const settled = word ? bySize(trace, word.quantity, size) : unnamed(trace, size);
+  const settled = word ? bySize(trace, word.quantity, size) : unnamed(trace, size, unnamedIs);
   const assumptions = [
     ...settled.assumptions,
     ...decimalNote(trace, settled.quantity, word !== null),
@@ -99,7 +99,11 @@ function bySize(trace: RawTrace, quantity: Quantity, size: Size): SettledQuantit
   return plain;
 }
 
-function unnamed(trace: RawTrace, size: Size): SettledQuantity {
+function unnamed(trace: RawTrace, size: Size, unnamedIs: Quantity | undefined): SettledQuantity {
+  if (unnamedIs !== undefined) {
+    const said = `Nothing in the file names the quantity; it was read as ${unnamedIs.replaceAll('-', ' ')}, as the sheet says.`;
+    return { quantity: unnamedIs, assumptions: [said] };
+  }
   if (size.highest > HIGHEST_UNNAMED || size.lowest < -HIGHEST_UNNAMED) {
     throw refusal(
       trace,

@@ -1,5 +1,6 @@
 import type { Sheet, SheetSpectrum } from '../sheet/schema.ts';
 import type { Reading } from './reading.ts';
+import { traceOf } from './trace-of.ts';
 
 /** Where a spectrum of the sheet came from, down to the bytes. */
 export interface SheetSource {
@@ -52,6 +53,6 @@ function sourceOf(
   return {
     file,
     sha256: reading?.sha256 ?? '',
-    decisions: reading?.spectra[trace]?.assumptions ?? [],
+    decisions: (reading && traceOf(reading, trace))?.assumptions ?? [],
   };
 }

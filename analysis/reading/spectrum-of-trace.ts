@@ -8,14 +8,14 @@ import { HIGHEST_NM, isPlausibleNm, LOWEST_NM, toNm } from './wavelength.ts';
  * A trace as the file has it to a spectrum: wavelengths ascending in nm, transmittance to
  * absorbance. Throws `Refusal` where order, range, number of points or quantity do not allow it.
  */
-export function spectrumOfTrace(trace: RawTrace): ReadSpectrum {
+export function spectrumOfTrace(trace: RawTrace, unnamedIs?: Quantity): ReadSpectrum {
   const { x, lines } = trace;
   if (x.length < 2) throw tooFewPoints(trace);
   const isAscending = checkOrder(x, lines, trace.unit);
   const nm = x.map((value) => toNm(value, trace.unit));
   checkRange(nm, trace);
   if (trace.y.every(Number.isNaN)) throw noValues(trace);
-  const { quantity, assumptions } = settleQuantity(trace);
+  const { quantity, assumptions } = settleQuantity(trace, unnamedIs);
   const converted = convert(trace.y, quantity);
   // Wavenumbers and energies run against wavelengths.
   const runsAgainst = trace.unit === 'cm-1' || trace.unit === 'eV';

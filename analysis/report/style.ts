@@ -19,11 +19,15 @@ tr { break-inside: avoid; }
 th, td { text-align: left; font-weight: 400; padding: 3px 10px 3px 0; border-bottom: 1px solid var(--rule); vertical-align: baseline; }
 thead th { color: var(--soft); border-bottom-color: #a9a598; vertical-align: bottom; }
 .number { text-align: right; white-space: nowrap; }
-.hash { font-family: ui-monospace, monospace; font-size: 9.5px; overflow-wrap: anywhere; }
+.interval-cell { white-space: nowrap; color: var(--soft); }
+td svg { vertical-align: middle; }
+.keep { break-inside: avoid; }
+.hash { font-family: ui-monospace, monospace; font-size: 8.5px; overflow-wrap: anywhere; }
 .aliquot { break-inside: auto; }
 .figure { display: block; width: 100%; height: auto; margin: 6px 0; break-inside: avoid; }
-.figure text { font: 10.5px system-ui, "Noto Sans", "DejaVu Sans", sans-serif; fill: #4f5b60; }
-.figure .label { font-weight: 600; fill: unset; paint-order: stroke; stroke: #fff; stroke-width: 3px; }
+.figure text { font: 10.5px system-ui, "Noto Sans", "DejaVu Sans", sans-serif; }
+.figure .tick, .figure .title { fill: #4f5b60; }
+.figure .label { font-weight: 600; paint-order: stroke; stroke: #fff; stroke-width: 3px; }
 .figure .grid { stroke: #e6e3db; } .figure .axis { stroke: #a9a598; }
 .figure .fitted { fill: none; stroke: #1b2326; stroke-width: 1; }
 .figure .point { fill: #fff; stroke: #1b2326; stroke-width: 0.7; } .figure .out { stroke: #9aa3a7; }

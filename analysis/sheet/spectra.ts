@@ -9,6 +9,14 @@ export function filesOf(sheet: Sheet): readonly string[] {
   return [...files];
 }
 
+/** What the sheet says of a file that the file itself may not: that it holds molar absorptivities. */
+export function knownOf(sheet: Sheet, file: string): { readonly unnamedIs?: 'molar-absorptivity' } {
+  const isEpsilon = (sheet.standards ?? []).some(
+    ({ kind, spectrum }) => kind === 'molar-absorptivity' && spectrum.file === file,
+  );
+  return isEpsilon ? { unnamedIs: 'molar-absorptivity' } : {};
+}
+
 /**
  * The sheet with every file that `embeddedFor` knows taken in, so that it can be mailed as one
  * file. What it does not know (null) stays a reference.

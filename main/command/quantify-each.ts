@@ -54,7 +54,7 @@ async function* linesOf(
     return;
   }
   const readings = new Map([[file, reading]]);
-  for (const [trace] of reading.spectra.entries()) {
+  for (const [index, { trace = index }] of reading.spectra.entries()) {
     const aliquot: SheetAliquot = { id: `${file}#${trace}`, spectrum: { file, trace } };
     yield fitted(prepared, aliquot, readings);
   }

@@ -2,8 +2,10 @@ import { readFile, stat } from 'node:fs/promises';
 import path from 'node:path';
 import {
   filesOf,
+  knownOf,
   openSheet,
   type Reading,
+  type ReadOptions,
   Refusal,
   readExport,
   type Sheet,
@@ -32,7 +34,7 @@ export async function openSheetFile(file: string): Promise<SheetFile> {
         mend: 'Put the file beside the sheet and name it from there.',
       });
     }
-    const reading = await readExportFile(path.join(folder, name), name);
+    const reading = await readExportFile(path.join(folder, name), name, knownOf(sheet, name));
     if (reading) readings.set(name, reading);
     else missing.push(name);
   }
@@ -49,11 +51,15 @@ export async function openSheetFile(file: string): Promise<SheetFile> {
 }
 
 /** One export as a reading; null if there is no such file. `name` is what the reading calls it. */
-export async function readExportFile(file: string, name: string): Promise<Reading | null> {
+export async function readExportFile(
+  file: string,
+  name: string,
+  options: ReadOptions = {},
+): Promise<Reading | null> {
   const size = await sizeOf(file);
   if (size === null) return null;
   // a file past the limit is refused by its size, before it fills the memory
-  return tooLargeReading(size, name) ?? readExport(await readFile(file), name);
+  return tooLargeReading(size, name) ?? readExport(await readFile(file), name, options);
 }
 
 async function sizeOf(file: string): Promise<number | null> {

@@ -35,7 +35,7 @@ export async function addExports(
   if (files.length === 0) return;
   const readings = await readAll(files);
   const spectra = readings.flatMap((each) =>
-    each.spectra.flatMap((_, trace) => embeddedFrom(each, trace) ?? []),
+    each.spectra.flatMap(({ trace }, index) => embeddedFrom(each, trace ?? index) ?? []),
   );
   tellWhatWasRead(readings, files.length);
   if (spectra.length === 0) return;

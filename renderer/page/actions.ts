@@ -2,6 +2,7 @@ import {
   embeddedFrom,
   embedSpectra,
   filesOf,
+  knownOf,
   newSheet,
   openSheet,
   type Reading,
@@ -64,7 +65,7 @@ export function run(command: MenuCommand): void {
 export async function openSource(source: SheetSource): Promise<void> {
   const { sheet: opened, warnings } = openSheet(source.text, source.name);
   const files = new Map(source.files.map((file) => [file.name, file]));
-  const readings = await readNamed(filesOf(opened), files);
+  const readings = await readNamed(opened, filesOf(opened), files);
   const next = embedSpectra(opened, (file, trace) => {
     const reading = readings.get(file);
     return reading ? embeddedFrom(reading, trace) : null;
@@ -87,7 +88,7 @@ export async function takeAwaited(files: readonly OpenedFile[]): Promise<readonl
       return file ? [[name, file] as const] : [];
     }),
   );
-  const readings = await readNamed([...found.keys()], found);
+  const readings = await readNamed(sheet.value, [...found.keys()], found);
   if (readings.size > 0) {
     change('take in files', (before) =>
       embedSpectra(before, (file, trace) => {
@@ -103,13 +104,14 @@ export async function takeAwaited(files: readonly OpenedFile[]): Promise<readonl
 }
 
 async function readNamed(
+  of: Sheet,
   names: readonly string[],
   files: ReadonlyMap<string, OpenedFile>,
 ): Promise<Map<string, Reading>> {
   const readings = new Map<string, Reading>();
   for (const name of names) {
     const file = files.get(name);
-    if (file) readings.set(name, await readFileBytes(name, file.bytes));
+    if (file) readings.set(name, await readFileBytes(name, file.bytes, knownOf(of, name)));
   }
   return readings;
 }

@@ -3,6 +3,7 @@ import {
   type Quantification,
   quantify,
   type Reading,
+  type ReadOptions,
   Refusal,
   type RefusalText,
   readExport,
@@ -27,8 +28,10 @@ export interface ReportTexts {
 const noFiles: ReadonlyMap<string, Reading> = new Map();
 
 const analysis = {
-  read: (file: { readonly name: string; readonly bytes: Uint8Array }): Reading =>
-    readExport(file.bytes, file.name),
+  read: (
+    file: { readonly name: string; readonly bytes: Uint8Array },
+    options: ReadOptions,
+  ): Reading => readExport(file.bytes, file.name, options),
 
   quantify: (sheet: Sheet): Outcome<Quantification> => outcome(() => quantify(sheet, noFiles)),
 

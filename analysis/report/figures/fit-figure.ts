@@ -30,7 +30,7 @@ export function fitFigureSvg(
   const parts = [
     leftOutBands(curves, upper, lower),
     axes(upper, null, 'absorbance'),
-    axes(lower, 'wavelength, nm', 'residual, mAU', 3),
+    axes(lower, 'wavelength, nm', 'residual, mAU', 4),
     stack(curves, upper),
     measured(curves, upper),
     residual(curves, lower),

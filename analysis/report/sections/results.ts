@@ -37,11 +37,12 @@ function aliquotHtml(
   const answer = answerText(sheet, result);
   const run = result.run === null ? '' : ` of run ${escaped(result.run)}`;
   return [
-    `<section class="aliquot"><h3>Aliquot ${escaped(result.aliquot)}${run}</h3>`,
+    `<section class="aliquot"><div class="keep"><h3>Aliquot ${escaped(result.aliquot)}${run}</h3>`,
     answer
       ? `<p class="answer">${escaped(answer.head)}</p><p class="interval">${escaped(answer.interval)}</p>`
       : '',
     curves ? fitFigureSvg(sheet, curves, result.doubts) : '',
+    '</div>',
     ledger(sheet, result),
     fitLine(result),
     doubtsHtml(sheet, result),
@@ -62,7 +63,7 @@ function ledger(sheet: Sheet, { concentrations, split }: AliquotResult): string 
   });
   return htmlTable(
     ['species', 'cuvette, µmol/L', '95 %', 'flask, mmol/L', '95 %', 'of products, %', '95 %'],
-    ['left', 'right', 'left', 'right', 'left', 'right', 'left'],
+    ['left', 'right', 'interval', 'right', 'interval', 'right', 'interval'],
     rows,
   );
 }
@@ -151,7 +152,7 @@ function comparisonsHtml(sheet: Sheet, comparisons: readonly ComparisonResult[])
   });
   return `<h2>Runs compared</h2>${htmlTable(
     ['runs', 'ratio', 'ratio of ratios', '95 %', 'p-value'],
-    ['left', 'left', 'right', 'left', 'right'],
+    ['left', 'left', 'right', 'interval', 'right'],
     rows,
   )}`;
 }
