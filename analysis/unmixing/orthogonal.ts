@@ -18,13 +18,10 @@ export interface OrthogonalFactors {
   nullSpace(): Float64Array[];
 }
 
-/** Up to this condition plain QR is as exact as the answer can be used; beyond it is refined. */
-const refineFrom = 30;
-
 /**
  * Householder QR of A with its columns scaled to norm about 1 (by powers of two, so exactly). Rank
- * by the singular values of R. Answers of ill-conditioned full-rank systems are refined with
- * double-double residuals (`refine.ts`).
+ * by the singular values of R. Answers of full-rank systems are refined with double-double
+ * residuals (`refine.ts`).
  *
  * @param columns the columns of A, one Float64Array each, all of one length
  * @param lowParts low halves of a double-double matrix (powers of x formed in double-double), same shape
@@ -53,7 +50,7 @@ export function factorise(
     rank,
     condition,
     solve(rhs) {
-      if (rank === size && condition > refineFrom) {
+      if (rank === size) {
         const low = lowParts?.map((column, k) => column.map((value) => value / scales[k]!));
         return unscaled(refined(factors, scaled, low, rhs));
       }
