@@ -3,9 +3,9 @@ import type { DoubtTest, Evidence } from './evidence.ts';
 import { percentText, twoFigures } from './wording.ts';
 
 /** The uncertainty of one is at least this many times what it were with the other known. */
-const inflationOfNote = 3;
+const inflationOfNote = 5;
 /** and the share between the two is uncertain by at least this (standard uncertainty). */
-const shareOfNote = 0.05;
+const shareOfNote = 0.02;
 /** A pair that holds less than this of everything found is not worth a doubt. */
 const pairOfNote = 0.05;
 

@@ -72,10 +72,14 @@ export function combineSolutions(solutions: readonly Solution[]): SpeciesStandar
   };
 }
 
+/** The one with the widest range; of equals the first by name, so that the order in the sheet does not matter. */
 function widest(solutions: readonly Solution[]): Solution {
   const reach = ({ wavelengthNm }: Solution): number =>
     (wavelengthNm.at(-1) ?? 0) - (wavelengthNm[0] ?? 0);
-  return solutions.reduce((best, next) => (reach(next) > reach(best) ? next : best));
+  return solutions.reduce((best, next) => {
+    const wider = reach(next) - reach(best);
+    return wider > 0 || (wider === 0 && next.standard < best.standard) ? next : best;
+  });
 }
 
 /** Weighted least-squares slope of one solution's ε on the reference's, as a logarithm with its variance. */
