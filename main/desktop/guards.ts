@@ -12,19 +12,19 @@ const text = v.pipe(v.string(), v.maxLength(512 * 1024 * 1024));
 
 /** What each channel takes; anything else is not acted on. */
 export const argumentsOf = {
-  nothing: v.tuple([]),
-  save: v.tuple([
+  nothing: v.strictTuple([]),
+  save: v.strictTuple([
     v.strictObject({
       text,
       handle: v.nullable(v.pipe(v.string(), v.maxLength(100))),
       suggestedName: name,
     }),
   ]),
-  exportText: v.tuple([
+  exportText: v.strictTuple([
     v.strictObject({ text, suggestedName: name, kind: v.picklist(['csv', 'html', 'json']) }),
   ]),
-  exportPdf: v.tuple([v.strictObject({ html: text, suggestedName: name })]),
-  unsaved: v.tuple([v.boolean()]),
+  exportPdf: v.strictTuple([v.strictObject({ html: text, suggestedName: name })]),
+  unsaved: v.strictTuple([v.boolean()]),
 } as const;
 
 /** Only the main frame of our own page may speak. */
