@@ -41,9 +41,6 @@ export function App() {
   return (
     <div class="page" data-dragging={isDragging.value || undefined}>
       <Header />
-      {isOpen.value && sheet.value.invented === true && (
-        <p class="invented">Invented data, for demonstration: not the spectra of real compounds.</p>
-      )}
       <Notices />
       <div class="page-body">
         {isOpen.value && <Shelf />}

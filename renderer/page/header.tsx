@@ -19,71 +19,76 @@ export function Header() {
   const undo = undoLabel.value;
   const redo = redoLabel.value;
   return (
-    <header class="page-header">
-      <div class="page-title">
-        <h1>
-          <span class="wordmark">Monobis</span>
+    <header>
+      <div class="page-header">
+        <div class="page-title">
+          <h1>
+            <span class="wordmark">Monobis</span>
+            {isOpen.value && (
+              <Field
+                label="Title of the sheet"
+                value={sheet.value.title ?? ''}
+                placeholder="Untitled sheet"
+                commit={(text) => {
+                  change('set the title', (before) => setTitle(before, text.trim()));
+                  return null;
+                }}
+              />
+            )}
+          </h1>
           {isOpen.value && (
-            <Field
-              label="Title of the sheet"
-              value={sheet.value.title ?? ''}
-              placeholder="Untitled sheet"
-              commit={(text) => {
-                change('set the title', (before) => setTitle(before, text.trim()));
-                return null;
-              }}
-            />
+            <p class="soft" role="status">
+              {fileName.value ?? 'not saved yet'}
+              {isUnsaved.value && fileName.value !== null && ', changed'}
+              {isWorking.value && ' · computing …'}
+            </p>
           )}
-        </h1>
-        {isOpen.value && (
-          <p class="soft" role="status">
-            {fileName.value ?? 'not saved yet'}
-            {isUnsaved.value && fileName.value !== null && ', changed'}
-            {isWorking.value && ' · computing …'}
-          </p>
-        )}
+        </div>
+        <div class="page-actions">
+          <button type="button" onClick={() => run('new-sheet')}>
+            New sheet
+          </button>
+          <button type="button" onClick={() => run('open-sheet')}>
+            Open…
+          </button>
+          {isOpen.value && (
+            <>
+              <button type="button" onClick={() => run('save')} title="Ctrl+S">
+                Save
+              </button>
+              <button type="button" onClick={() => run('save-as')} title="Ctrl+Shift+S">
+                Save as…
+              </button>
+              <button type="button" onClick={() => run('add-exports')}>
+                Add exports…
+              </button>
+              <ExportMenu />
+              <button
+                type="button"
+                disabled={undo === null}
+                title={undo === null ? 'Nothing to undo' : `Undo: ${undo}`}
+                onClick={() => run('undo')}
+              >
+                Undo
+              </button>
+              <button
+                type="button"
+                disabled={redo === null}
+                title={redo === null ? 'Nothing to redo' : `Redo: ${redo}`}
+                onClick={() => run('redo')}
+              >
+                Redo
+              </button>
+            </>
+          )}
+          <button type="button" onClick={() => run('open-sample')}>
+            Open the sample sheet
+          </button>
+        </div>
       </div>
-      <div class="page-actions">
-        <button type="button" onClick={() => run('new-sheet')}>
-          New sheet
-        </button>
-        <button type="button" onClick={() => run('open-sheet')}>
-          Open…
-        </button>
-        {isOpen.value && (
-          <>
-            <button type="button" onClick={() => run('save')} title="Ctrl+S">
-              Save
-            </button>
-            <button type="button" onClick={() => run('save-as')} title="Ctrl+Shift+S">
-              Save as…
-            </button>
-            <button type="button" onClick={() => run('add-exports')}>
-              Add exports…
-            </button>
-            <ExportMenu />
-            <button
-              type="button"
-              disabled={undo === null}
-              title={undo === null ? 'Nothing to undo' : `Undo: ${undo}`}
-              onClick={() => run('undo')}
-            >
-              Undo
-            </button>
-            <button
-              type="button"
-              disabled={redo === null}
-              title={redo === null ? 'Nothing to redo' : `Redo: ${redo}`}
-              onClick={() => run('redo')}
-            >
-              Redo
-            </button>
-          </>
-        )}
-        <button type="button" onClick={() => run('open-sample')}>
-          Open the sample sheet
-        </button>
-      </div>
+      {isOpen.value && sheet.value.invented === true && (
+        <p class="invented">Invented data, for demonstration: not the spectra of real compounds.</p>
+      )}
     </header>
   );
 }

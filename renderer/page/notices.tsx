@@ -6,7 +6,7 @@ import { dismiss, type Notice, notices } from '../state/notices.ts';
 export function Notices() {
   const progress = reading.value;
   return (
-    <div class="notices">
+    <section class="notices" aria-label="Notices">
       {progress && (
         <div class="notice" role="status">
           <p>
@@ -21,7 +21,7 @@ export function Notices() {
       {notices.value.map((notice) => (
         <NoticeCard key={notice.id} notice={notice} />
       ))}
-    </div>
+    </section>
   );
 }
 

@@ -63,10 +63,12 @@ export async function dropFiles(
   selector: string,
   files: readonly string[],
 ): Promise<void> {
+  await page.locator(selector).first().scrollIntoViewIfNeeded();
   const box = await page.locator(selector).first().boundingBox();
   if (!box) throw new Error(`there is nothing to drop on at ${selector}`);
   const session = await page.context().newCDPSession(page);
-  const at = { x: box.x + box.width / 2, y: box.y + Math.min(box.height / 2, 40) };
+  // below the header, which stays in place
+  const at = { x: box.x + box.width / 2, y: Math.max(box.y + Math.min(box.height / 2, 40), 140) };
   const data = { items: [], files: [...files], dragOperationsMask: 1 };
   for (const type of ['dragEnter', 'dragOver', 'drop'] as const) {
     await session.send('Input.dispatchDragEvent', { type, ...at, data });

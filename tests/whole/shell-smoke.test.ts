@@ -14,8 +14,8 @@ describe.runIf(runtime !== null)('the real shell', () => {
       await page.getByRole('button', { name: 'Open the sample sheet' }).last().click();
       await page.locator('.answer-head').waitFor();
       expect(
-        await page.evaluate(() => [typeof window.monobisDesktop, 'require' in window]),
-      ).toEqual(['object', false]);
+        await page.evaluate(() => ['monobisDesktop' in window, 'require' in window]),
+      ).toEqual([true, false]);
     } finally {
       await app.close();
     }
