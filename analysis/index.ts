@@ -1,28 +1,26 @@
 /** The only door to the science: what main/ and renderer/ may import. */
-export { type Doubt, type DoubtCode, doubtCodes } from './doubts/doubt.ts';
+export type { Doubt, DoubtCode } from './doubts/doubt.ts';
 export { programName } from './program.ts';
 export { type PreparedSheet, prepare, quantify, quantifyAliquot } from './quantify.ts';
 export { embeddedFrom } from './reading/embedded.ts';
 export { type ReadOptions, readExport } from './reading/read-export.ts';
-export type { Quantity, Reading, ReadSpectrum, RefusedPart } from './reading/reading.ts';
+export type { Reading, RefusedPart } from './reading/reading.ts';
 export { readingToJson } from './reading/reading-to-json.ts';
-export { type SheetSource, sheetSources } from './reading/sheet-sources.ts';
+export { sheetSources } from './reading/sheet-sources.ts';
 export { tooLargeReading } from './reading/too-large.ts';
-export { Refusal, type RefusalText, refusalSentence, type Where } from './refusal.ts';
+export { Refusal, type RefusalText, refusalSentence } from './refusal.ts';
 export { labelSpot } from './report/label-spot.ts';
 export {
   figuresText,
   numberText,
-  type QuantifiedText,
   quantifiedText,
-  type ReadingUnit,
 } from './report/numbers.ts';
 export { reportCsv } from './report/report-csv.ts';
-export { type ReportOptions, reportHtml } from './report/report-html.ts';
+export { reportHtml } from './report/report-html.ts';
 export { resultsJson } from './report/results-json.ts';
-export { type AnswerText, answerText } from './report/sections/answer.ts';
+export { answerText } from './report/sections/answer.ts';
 export { speciesGlyph } from './report/species-glyph.ts';
-export { type SpeciesLook, speciesLook } from './report/species-look.ts';
+export { speciesLook } from './report/species-look.ts';
 export {
   absorbingSpecies,
   fitSettings,
@@ -36,12 +34,12 @@ export {
   addSpecies,
   addStandards,
   addStockFor,
-  type Changes,
   removeAliquot,
   removeRun,
   removeSpecies,
   removeStandard,
   removeStock,
+  renameSpecies,
   setFit,
   setReaction,
   setTitle,
@@ -50,32 +48,27 @@ export {
   updateSpecies,
   updateStandard,
   updateStock,
+  whyNotRename,
 } from './sheet/edits.ts';
 export { newSheet } from './sheet/new-sheet.ts';
-export { type OpenedSheetText, openSheet } from './sheet/open-sheet.ts';
+export { openSheet } from './sheet/open-sheet.ts';
 export type {
   EmbeddedSpectrum,
   Sheet,
   SheetAliquot,
   SheetDilution,
-  SheetFit,
   SheetRun,
   SheetSpecies,
-  SheetSpectrum,
   SheetStandard,
-  SheetStock,
 } from './sheet/schema.ts';
 export { sheetText } from './sheet/sheet-text.ts';
 export { embedSpectra, filesOf, knownOf } from './sheet/spectra.ts';
 export {
   type AliquotCurves,
   type AliquotResult,
-  type BudgetShare,
-  type ConcentrationResult,
   leftOut,
   type Quantification,
   type Quantified,
-  type RatioResult,
   type Results,
   type RunResult,
   type SplitFraction,

@@ -1,5 +1,5 @@
 /** The closed list of SHEET.md. */
-export const doubtCodes = [
+const doubtCodes = [
   'saturated',
   'lookalike-standards',
   'unexplained-band',

@@ -11,18 +11,23 @@ import type {
 
 /**
  * Changes of a sheet, each a function from sheet to sheet that leaves a sheet which `openSheet`
- * takes: what refers to a thing that goes, goes or lets go with it. A member given as `undefined`
- * is taken out.
+ * takes: what refers to a thing that goes, goes or lets go with it, and a change that names what is
+ * not there leaves the sheet as it is. Numbers must be such as the schema allows; the fields on
+ * screen see to that. An id is changed by `renameSpecies` alone.
  */
 
-/** Members to set; `undefined` takes a member out. */
-export type Changes<T> = { readonly [K in keyof T]?: T[K] | undefined };
+/** Members to set; `undefined` takes an optional member out. */
+export type Changes<T> = {
+  readonly [K in keyof T]?: undefined extends T[K] ? T[K] | undefined : T[K];
+};
 
 export function setTitle(sheet: Sheet, title: string): Sheet {
   return { ...sheet, title };
 }
 
 export function setReaction(sheet: Sheet, changes: Changes<Sheet['reaction']>): Sheet {
+  const { core = sheet.reaction.core, arm = sheet.reaction.arm } = changes;
+  if (!has(sheet.species, core) || !has(sheet.species, arm)) return sheet;
   return { ...sheet, reaction: changed(sheet.reaction, changes) };
 }
 
@@ -41,6 +46,41 @@ export function addSpecies(
 
 export function updateSpecies(sheet: Sheet, id: string, changes: Changes<SheetSpecies>): Sheet {
   return { ...sheet, species: updated(sheet.species, id, changes) };
+}
+
+/** Why a species cannot be given this id, in words; null if it can. */
+export function whyNotRename(sheet: Sheet, id: string, next: string): string | null {
+  if (next === '') return 'An id is needed.';
+  if (next.length > longestId) return `An id has at most ${longestId} characters.`;
+  if (next !== id && has(sheet.species, next)) return `"${next}" is another species already.`;
+  return null;
+}
+
+/** Gives a species another id; all that refers to it follows. An id that cannot be changes nothing. */
+export function renameSpecies(sheet: Sheet, id: string, next: string): Sheet {
+  if (id === next || !has(sheet.species, id)) return sheet;
+  if (whyNotRename(sheet, id, next) !== null) return sheet;
+  const follow = (name: string): string => (name === id ? next : name);
+  const following = <T extends { readonly species: string }>(entry: T): T =>
+    entry.species === id ? { ...entry, species: next } : entry;
+  return {
+    ...sheet,
+    reaction: {
+      ...sheet.reaction,
+      core: follow(sheet.reaction.core),
+      arm: follow(sheet.reaction.arm),
+    },
+    species: sheet.species.map((entry) => (entry.id === id ? { ...entry, id: next } : entry)),
+    ...(sheet.stocks ? { stocks: sheet.stocks.map(following) } : {}),
+    ...(sheet.standards ? { standards: sheet.standards.map(following) } : {}),
+    ...(sheet.runs ? { runs: sheet.runs.map((run) => withChargesRenamed(run, follow)) } : {}),
+  };
+}
+
+function withChargesRenamed(run: SheetRun, follow: (id: string) => string): SheetRun {
+  if (!run.chargedMol) return run;
+  const charges = Object.entries(run.chargedMol).map(([id, mol]) => [follow(id), mol] as const);
+  return { ...run, chargedMol: Object.fromEntries(charges) };
 }
 
 /** Takes a species out, with its standards, its stocks and its charges. Core and arm stay. */
@@ -65,6 +105,7 @@ export function addStandards(
   spectra: readonly EmbeddedSpectrum[],
   species: string,
 ): Sheet {
+  if (!has(sheet.species, species)) return sheet;
   let standards = sheet.standards ?? [];
   for (const embedded of spectra) {
     const id = freeId('S', standards);
@@ -76,15 +117,8 @@ export function addStandards(
 
 /** A standard that changes its species lets go of a stock of the old one. */
 export function updateStandard(sheet: Sheet, id: string, changes: Changes<SheetStandard>): Sheet {
-  const stocks = new Map((sheet.stocks ?? []).map((stock) => [stock.id, stock.species]));
-  const standards = updated(sheet.standards ?? [], id, changes).map((standard) => {
-    if (standard.stock === undefined || stocks.get(standard.stock) === standard.species) {
-      return standard;
-    }
-    const { stock: _, ...rest } = standard;
-    return rest;
-  });
-  return { ...sheet, standards };
+  if (changes.species !== undefined && !has(sheet.species, changes.species)) return sheet;
+  return withStocksMet({ ...sheet, standards: updated(sheet.standards ?? [], id, changes) });
 }
 
 export function removeStandard(sheet: Sheet, id: string): Sheet {
@@ -96,29 +130,23 @@ export function addStockFor(sheet: Sheet, standardId: string): Sheet {
   const standard = sheet.standards?.find(({ id }) => id === standardId);
   if (!standard) return sheet;
   const stocks = sheet.stocks ?? [];
-  const id = freeId(`${standard.species}-stock`, stocks);
-  return {
-    ...sheet,
-    stocks: [...stocks, { id, species: standard.species }],
-    standards: updated(sheet.standards ?? [], standardId, { stock: id }),
-  };
+  const id = freeId(`${standard.species.slice(0, longestId)}-stock`, stocks);
+  return updateStandard(
+    { ...sheet, stocks: [...stocks, { id, species: standard.species }] },
+    standardId,
+    { stock: id },
+  );
 }
 
+/** Standards of another species let go of a stock that changes its own. */
 export function updateStock(sheet: Sheet, id: string, changes: Changes<SheetStock>): Sheet {
-  return { ...sheet, stocks: updated(sheet.stocks ?? [], id, changes) };
+  if (changes.species !== undefined && !has(sheet.species, changes.species)) return sheet;
+  return withStocksMet({ ...sheet, stocks: updated(sheet.stocks ?? [], id, changes) });
 }
 
 /** Standards made from it stay, without a stock. */
 export function removeStock(sheet: Sheet, id: string): Sheet {
-  return {
-    ...sheet,
-    stocks: without(sheet.stocks ?? [], id),
-    standards: (sheet.standards ?? []).map((standard) => {
-      if (standard.stock !== id) return standard;
-      const { stock: _, ...rest } = standard;
-      return rest;
-    }),
-  };
+  return withStocksMet({ ...sheet, stocks: without(sheet.stocks ?? [], id) });
 }
 
 /** Adds one aliquot for each spectrum. */
@@ -127,6 +155,7 @@ export function addAliquots(
   spectra: readonly EmbeddedSpectrum[],
   run: string | null,
 ): Sheet {
+  if (run !== null && !has(sheet.runs ?? [], run)) return sheet;
   let aliquots = sheet.aliquots ?? [];
   for (const embedded of spectra) {
     const id = freeId('a', aliquots);
@@ -136,6 +165,7 @@ export function addAliquots(
 }
 
 export function updateAliquot(sheet: Sheet, id: string, changes: Changes<SheetAliquot>): Sheet {
+  if (changes.run !== undefined && !has(sheet.runs ?? [], changes.run)) return sheet;
   return { ...sheet, aliquots: updated(sheet.aliquots ?? [], id, changes) };
 }
 
@@ -151,6 +181,8 @@ export function addRun(sheet: Sheet, aliquotId?: string): Sheet {
 }
 
 export function updateRun(sheet: Sheet, id: string, changes: Changes<SheetRun>): Sheet {
+  const charged = Object.keys(changes.chargedMol ?? {});
+  if (charged.some((species) => !has(sheet.species, species))) return sheet;
   return { ...sheet, runs: updated(sheet.runs ?? [], id, changes) };
 }
 
@@ -167,6 +199,22 @@ export function removeRun(sheet: Sheet, id: string): Sheet {
   };
 }
 
+/** Each standard without a stock that is gone or of another species. */
+function withStocksMet(sheet: Sheet): Sheet {
+  const stocks = new Map((sheet.stocks ?? []).map((stock) => [stock.id, stock.species]));
+  const standards = (sheet.standards ?? []).map((standard) => {
+    if (standard.stock === undefined || stocks.get(standard.stock) === standard.species) {
+      return standard;
+    }
+    const { stock: _, ...rest } = standard;
+    return rest;
+  });
+  return { ...sheet, standards };
+}
+
+/** Leaves room for the number and the suffix of what is named after it; the format allows 200. */
+const longestId = 100;
+
 interface Named {
   readonly id: string;
 }
@@ -179,6 +227,10 @@ function freeId(prefix: string, taken: readonly Named[]): string {
   return `${prefix}${number}`;
 }
 
+function has(list: readonly Named[], id: string): boolean {
+  return list.some((entry) => entry.id === id);
+}
+
 function without<T extends Named>(list: readonly T[], id: string): readonly T[] {
   return list.filter((entry) => entry.id !== id);
 }
@@ -188,7 +240,7 @@ function updated<T extends Named>(
   id: string,
   changes: Changes<T>,
 ): readonly T[] {
-  return list.map((entry) => (entry.id === id ? changed(entry, changes) : entry));
+  return list.map((entry) => (entry.id === id ? { ...changed(entry, changes), id } : entry));
 }
 
 function changed<T extends object>(value: T, changes: Changes<T>): T {

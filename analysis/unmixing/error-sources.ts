@@ -62,11 +62,6 @@ export function pointCovariance(
   );
 }
 
-/** Covariance of the amounts from everything together. */
-export function totalCovariance(sources: ErrorSources): Float64Array[] {
-  return sumOf([ownCovariance(sources), commonCovariance(sources)]);
-}
-
 /** What an aliquot has for itself: noise, lack of fit, and what the data do not see. */
 export function ownCovariance({ points, unseen }: ErrorSources): Float64Array[] {
   return sumOf([points, unseen]);

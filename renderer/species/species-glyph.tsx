@@ -1,10 +1,4 @@
-import { absorbingSpecies, type Sheet, speciesGlyph, speciesLook } from '../../analysis/index.ts';
-
-/** Colour and pattern of a species, the same wherever it is drawn; null for one that does not absorb. */
-export function lookOf(sheet: Sheet, id: string) {
-  const index = absorbingSpecies(sheet).findIndex((species) => species.id === id);
-  return index === -1 ? null : speciesLook(index);
-}
+import { absorbingSpecies, type Sheet, speciesGlyph } from '../../analysis/index.ts';
 
 /** The class that gives an element the species' colour, by light and dark. */
 export function lookClass(sheet: Sheet, id: string): string {

@@ -13,9 +13,10 @@ describe.runIf(runtime !== null)('the real shell', () => {
       const page = await app.firstWindow();
       await page.getByRole('button', { name: 'Open the sample sheet' }).last().click();
       await page.locator('.answer-head').waitFor();
-      expect(
-        await page.evaluate(() => ['monobisDesktop' in window, 'require' in window]),
-      ).toEqual([true, false]);
+      expect(await page.evaluate(() => ['monobisDesktop' in window, 'require' in window])).toEqual([
+        true,
+        false,
+      ]);
     } finally {
       await app.close();
     }
