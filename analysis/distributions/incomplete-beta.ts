@@ -1,6 +1,8 @@
-import { logGamma } from './log-gamma.ts';
+import { deviance } from './deviance.ts';
+import { stirlingError } from './stirling-error.ts';
 
-const mostTerms = 10_000;
+/** Some √max(a, b) terms are needed; this is enough for 1e10. */
+const mostTerms = 1_000_000;
 const tiny = 1e-300;
 
 /**
@@ -8,16 +10,28 @@ const tiny = 1e-300;
  * side where it converges fast. `y` is 1 - x, given apart so that it is not lost near x = 1.
  */
 export function incompleteBeta(a: number, b: number, x: number, y = 1 - x): number {
-  if (!(a > 0 && b > 0 && x >= 0 && y >= 0))
+  if (!(a > 0 && b > 0 && a + b < Number.POSITIVE_INFINITY && x >= 0 && y >= 0)) {
     throw new RangeError(`incompleteBeta(${a}, ${b}, ${x})`);
+  }
   if (x === 0) return 0;
   if (y === 0) return 1;
-  const front = Math.exp(
-    logGamma(a + b) - logGamma(a) - logGamma(b) + a * Math.log(x) + b * Math.log(y),
-  );
+  const front = density(a, b, x, y);
   return x < (a + 1) / (a + b + 2)
     ? (front * fraction(a, b, x)) / a
     : 1 - (front * fraction(b, a, y)) / b;
+}
+
+/** x^a y^b Γ(a + b) / (Γ(a) Γ(b)), around its peak at x = a/(a + b). */
+function density(a: number, b: number, x: number, y: number): number {
+  const sum = a + b;
+  const gap = x * b - y * a;
+  const exponent =
+    a * deviance((x / a) * sum, gap / a) +
+    b * deviance((y / b) * sum, -gap / b) +
+    stirlingError(a) +
+    stirlingError(b) -
+    stirlingError(sum);
+  return Math.sqrt(((a / sum) * b) / (2 * Math.PI)) * Math.exp(-exponent);
 }
 
 function fraction(a: number, b: number, x: number): number {
@@ -35,9 +49,9 @@ function fraction(a: number, b: number, x: number): number {
     c = guarded(1 + odd / c);
     const change = d * c;
     result *= change;
-    if (Math.abs(change - 1) < 1e-16) break;
+    if (Math.abs(change - 1) <= Number.EPSILON) return result;
   }
-  return result;
+  throw new RangeError(`incompleteBeta(${a}, ${b}, ${x}) does not settle`);
 }
 
 function guarded(value: number): number {

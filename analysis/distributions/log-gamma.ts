@@ -12,7 +12,7 @@ export function logGamma(x: number): number {
   if (!(x > 0)) throw new RangeError(`logGamma needs x > 0, not ${x}`);
   let sum = 0;
   for (const [k, coefficient] of lanczos.entries())
-    sum += k === 0 ? coefficient : coefficient / (x - 1 + k);
+    sum += k === 0 ? coefficient : coefficient / (x + (k - 1));
   const t = x + g - 0.5;
   return (x - 0.5) * Math.log(t) - t + Math.log(Math.sqrt(2 * Math.PI) * sum);
 }
