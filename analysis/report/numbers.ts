@@ -66,7 +66,7 @@ export function quantifiedText(
     number === null ? missing : placed(number, places);
   return {
     value: text(value),
-    uncertainty: text(u),
+    uncertainty: u === 0 ? '0' : text(u),
     low: text(low, 'no lower bound'),
     high: text(high, 'no upper bound'),
     interval: intervalText(low, high, text),
@@ -76,10 +76,8 @@ export function quantifiedText(
 
 /** A value rounded so that two significant figures of its standard uncertainty remain, as text. */
 export function roundedTo(value: number, standardUncertainty: number): string {
-  return quantifiedText(
-    { value, standardUncertainty, interval95: [null, null] },
-    { unit: 'plain' },
-  ).value;
+  return quantifiedText({ value, standardUncertainty, interval95: [null, null] }, { unit: 'plain' })
+    .value;
 }
 
 /** Decimals at which a number keeps so many significant figures; negative for tens, hundreds, … */
@@ -175,11 +173,18 @@ function decimalsFor({ value, u, low, high }: Numbers): number {
     const isLimit = high !== null && high > 0 && value !== null && value < u;
     return decimalsOf(isLimit ? Math.min(u, high) : u, 2);
   }
-  const width = low !== null && high !== null ? high - low : 0;
+  const width = widthOf(value, low, high);
   if (width > 0) return decimalsOf(width / 4, 2);
   // exact, or of unknown uncertainty: no more than is needed to write it, up to four figures
   const sizes = [value, low, high].filter((number) => number !== null && number !== 0);
   return sizes.length === 0 ? 0 : Math.max(...sizes.map((number) => shortDecimals(number ?? 0)));
+}
+
+/** Of the 95 % interval; twice the known side where the other is not bounded. */
+function widthOf(value: number | null, low: number | null, high: number | null): number {
+  if (low !== null && high !== null) return high - low;
+  const end = low ?? high;
+  return value === null || end === null ? 0 : 2 * Math.abs(value - end);
 }
 
 function shortDecimals(number: number): number {
