@@ -1,3 +1,4 @@
+import type { Doubt } from '../doubts/doubt.ts';
 import type { Sheet } from '../sheet/schema.ts';
 import type { AliquotResult, Quantification, Quantified, RunResult } from '../split/results.ts';
 
@@ -18,7 +19,8 @@ type Row = Partial<Record<(typeof headings)[number], string | number | null>>;
 /**
  * One tidy row per number, RFC 4180 (commas, CRLF), full precision with a decimal point. It begins
  * with a byte-order mark, by which spreadsheets know UTF-8. Text that a spreadsheet would take for
- * a formula is given a leading apostrophe; numbers are left as numbers.
+ * a formula is given a leading apostrophe; numbers are left as numbers. An empty cell is an end
+ * that is not bounded, or a value that does not exist. Throws (a fault) on a number that is none.
  */
 export function reportCsv(sheet: Sheet, { results }: Quantification): string {
   const rows: Row[] = [
@@ -107,11 +109,20 @@ function aliquotRows(result: AliquotResult): Row[] {
       unit: 'absorbance at 0',
       text: `from the ${fit.noise.from}`,
     },
-    ...result.doubts.map(
-      ({ code, message }): Row => ({ quantity: `doubt: ${code}`, text: message }),
-    ),
+    ...result.doubts.flatMap(doubtRows),
     ...result.notes.map((text): Row => ({ quantity: 'note', text })),
   ].map((row) => ({ ...whose, ...row }));
+}
+
+/** One row for each range of wavelengths that the doubt names, one without if it names none. */
+function doubtRows({ code, message, atNm = [], species = [] }: Doubt): Row[] {
+  const doubt = { quantity: `doubt:${code}`, species: species.join(' / '), text: message };
+  if (atNm.length < 2) return [doubt];
+  const rows: Row[] = [];
+  for (let i = 0; i + 1 < atNm.length; i += 2) {
+    rows.push({ ...doubt, low: atNm[i] ?? null, high: atNm[i + 1] ?? null, unit: 'nm' });
+  }
+  return rows;
 }
 
 function runRows({ run, aliquots, balance, ...result }: RunResult): Row[] {
@@ -155,7 +166,10 @@ function numbers({ value, standardUncertainty, interval95: [low, high] }: Quanti
 
 function cell(value: string | number | null | undefined): string {
   if (value === null || value === undefined || value === '') return '';
-  if (typeof value === 'number') return String(value);
+  if (typeof value === 'number') {
+    if (!Number.isFinite(value)) throw new Error('a number of the results is not finite');
+    return String(value);
+  }
   const safe = /^\s*[=+\-@\t\r]/.test(value) ? `'${value}` : value;
   return /[",\r\n]/.test(safe) ? `"${safe.replaceAll('"', '""')}"` : safe;
 }

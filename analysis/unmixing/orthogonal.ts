@@ -73,7 +73,9 @@ function powerOfTwoScale(column: Float64Array): number {
   if (!(largest > 0) || !Number.isFinite(largest)) return 1;
   let sum = 0;
   for (const value of column) sum += (value / largest) ** 2;
-  return 2 ** Math.round(Math.log2(largest) + Math.log2(sum) / 2);
+  const exponent = Math.round(Math.log2(largest) + Math.log2(sum) / 2);
+  // neither the scale nor its inverse may overflow; a column below 1e-301 then counts as empty
+  return 2 ** Math.min(Math.max(exponent, -1000), 1000);
 }
 
 /** V S⁺ Uᵀ with only the first `rank` singular values. */

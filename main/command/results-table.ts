@@ -4,6 +4,7 @@ import {
   quantifiedText,
   type Results,
   type Sheet,
+  speciesLabel,
   speciesName,
 } from '../../analysis/index.ts';
 import { table } from './table.ts';
@@ -31,7 +32,8 @@ function aliquotBlock(sheet: Sheet, aliquot: AliquotResult): string {
     ];
   });
   const ratios = aliquot.ratios.map(
-    ({ of, to, value }) => `  ${name(of)} : ${name(to)} = ${cell(value, 'plain')}`,
+    ({ of, to, value }) =>
+      `  ${speciesLabel(sheet, of)} : ${speciesLabel(sheet, to)} = ${cell(value, 'plain')}`,
   );
   const doubts = aliquot.doubts.map(({ code, message }) => `  ! ${code}: ${message}`);
   return [
@@ -52,13 +54,13 @@ function runsBlock(sheet: Sheet, { runs }: Results): string {
     ...split.map(({ species, fraction }) => [
       run,
       String(aliquots),
-      `${speciesName(sheet, species)}, % of products`,
+      `${speciesLabel(sheet, species)}, % of products`,
       cell(fraction, 'percent'),
     ]),
     ...ratios.map(({ of, to, value }) => [
       run,
       String(aliquots),
-      `${speciesName(sheet, of)} : ${speciesName(sheet, to)}`,
+      `${speciesLabel(sheet, of)} : ${speciesLabel(sheet, to)}`,
       cell(value, 'plain'),
     ]),
   ]);
@@ -68,7 +70,7 @@ function runsBlock(sheet: Sheet, { runs }: Results): string {
 function comparisonsBlock(sheet: Sheet, { comparisons }: Results): string {
   const rows = comparisons.map(({ runs, of, to, ratioOfRatios, pValue }) => [
     `${runs[0]} over ${runs[1]}`,
-    `${speciesName(sheet, of)} : ${speciesName(sheet, to)}`,
+    `${speciesLabel(sheet, of)} : ${speciesLabel(sheet, to)}`,
     cell(ratioOfRatios, 'plain'),
     pValue === null ? '' : pValue < 1e-4 ? 'below 0.0001' : pValue.toPrecision(2),
   ]);
