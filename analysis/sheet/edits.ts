@@ -51,6 +51,10 @@ export function updateSpecies(sheet: Sheet, id: string, changes: Changes<SheetSp
 /** Why a species cannot be given this id, in words; null if it can. */
 export function whyNotRename(sheet: Sheet, id: string, next: string): string | null {
   if (next === '') return 'An id is needed.';
+  // names of the language's own: readers of JSON drop members so called
+  if (['__proto__', 'constructor', 'prototype'].includes(next)) {
+    return `"${next}" cannot be an id.`;
+  }
   if (next.length > longestId) return `An id has at most ${longestId} characters.`;
   if (next !== id && has(sheet.species, next)) return `"${next}" is another species already.`;
   return null;
