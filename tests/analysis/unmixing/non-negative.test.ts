@@ -4,9 +4,10 @@ import { nonNegativeLeastSquares } from '../../../analysis/unmixing/non-negative
 import { factorise } from '../../../analysis/unmixing/orthogonal.ts';
 
 const rows = 12;
+/** Up to 3 with six decimals, zeros often: what absorbances and absorptivities look like when scaled. */
 const vector = fc
-  .array(fc.double({ min: -3, max: 3, noNaN: true }), { minLength: rows, maxLength: rows })
-  .map((list) => Float64Array.from(list));
+  .array(fc.integer({ min: -3_000_000, max: 3_000_000 }), { minLength: rows, maxLength: rows })
+  .map((list) => Float64Array.from(list, (value) => value / 1e6));
 const fewColumns = fc.array(vector, { minLength: 1, maxLength: 5 });
 /** Columns of full rank, condition below some 10: an entry of its own on each outweighs the rest. */
 const distinctColumns = fewColumns.map((columns) =>
