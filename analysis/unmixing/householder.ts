@@ -1,13 +1,11 @@
-import { Matrix } from 'ml-matrix';
-
 /** A = Q R by Householder reflections (Golub and Van Loan, Matrix Computations, 5.2). */
 export interface HouseholderFactors {
   readonly rows: number;
   readonly columns: number;
-  /** R, columns × columns. */
-  upper(): Matrix;
-  /** R⁻¹; only for a matrix of full rank. */
-  upperInverse(): Matrix;
+  /** R by rows, columns × columns. */
+  upper(): Float64Array[];
+  /** R⁻¹ by rows; only for a matrix of full rank. */
+  upperInverse(): Float64Array[];
   /** Qᵀ b, length max(rows, columns). */
   rotated(vector: Float64Array): Float64Array;
   /** Q b, for b as `rotated` gives it; length `rows`. */
@@ -44,8 +42,7 @@ export function householder(columns: readonly Float64Array[]): HouseholderFactor
   return {
     rows,
     columns: size,
-    upper: () =>
-      new Matrix(Array.from({ length: size }, (_, i) => columns.map((__, j) => entry(i, j)))),
+    upper: () => columns.map((_, i) => Float64Array.from(columns, (__, j) => entry(i, j))),
     upperInverse: () => invertedUpper(size, entry),
     rotated: (vector) => forward(padded(vector, height)),
     rotatedBack: (vector) => backward(padded(vector, height)),
@@ -87,13 +84,13 @@ function applyReflection(column: Float64Array, k: number, vector: Float64Array):
   for (let i = k; i < vector.length; i++) vector[i]! -= along * column[i]!;
 }
 
-function invertedUpper(size: number, entry: (i: number, j: number) => number): Matrix {
-  const inverse = Matrix.zeros(size, size);
+function invertedUpper(size: number, entry: (i: number, j: number) => number): Float64Array[] {
+  const inverse = Array.from({ length: size }, () => new Float64Array(size));
   for (let column = 0; column < size; column++) {
     for (let i = column; i >= 0; i--) {
       let sum = i === column ? 1 : 0;
-      for (let j = i + 1; j <= column; j++) sum -= entry(i, j) * inverse.get(j, column);
-      inverse.set(i, column, sum / entry(i, i));
+      for (let j = i + 1; j <= column; j++) sum -= entry(i, j) * inverse[j]![column]!;
+      inverse[i]![column] = sum / entry(i, i);
     }
   }
   return inverse;

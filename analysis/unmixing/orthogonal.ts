@@ -1,8 +1,9 @@
 import { Matrix, SingularValueDecomposition } from 'ml-matrix';
 import { type HouseholderFactors, householder } from './householder.ts';
+import { powerOfTwoNear, scaledBy } from './power-of-two.ts';
 import { refined } from './refine.ts';
 
-/** The least-squares solution of a tall matrix A, made ready for any right-hand side. */
+/** The least-squares solution of a matrix A, made ready for any right-hand side. */
 export interface OrthogonalFactors {
   readonly rows: number;
   readonly columns: number;
@@ -19,9 +20,10 @@ export interface OrthogonalFactors {
 }
 
 /**
- * Householder QR of A with its columns scaled to norm about 1 (by powers of two, so exactly). Rank
- * by the singular values of R. Answers of full-rank systems are refined with double-double
- * residuals (`refine.ts`).
+ * Householder QR of A with its columns scaled by powers of two, so exactly. Rank and condition are
+ * those of the columns scaled to norm 1, by the singular values of R (whatever unit a column is in,
+ * they are the same). Answers of full-rank systems are refined with double-double residuals
+ * (`refine.ts`). RangeError for no columns, unequal lengths, or an entry that is not finite.
  *
  * @param columns the columns of A, one Float64Array each, all of one length
  * @param lowParts low halves of a double-double matrix (powers of x formed in double-double), same shape
@@ -32,78 +34,107 @@ export function factorise(
 ): OrthogonalFactors {
   const rows = columns[0]?.length ?? 0;
   const size = columns.length;
-  const scales = columns.map(powerOfTwoScale);
-  const scaled = columns.map((column, k) => column.map((value) => value / scales[k]!));
+  checkShape(columns, rows);
+  if (lowParts) checkShape(lowParts, rows);
+  const scales = columns.map(powerOfTwoNear);
+  const scaled = columns.map((column, k) => scaledBy(column, scales[k]!));
   const factors = householder(scaled);
-  const svd = new SingularValueDecomposition(factors.upper());
-  const values = svd.diagonal;
-  const largest = values[0] ?? 0;
-  const tolerance = Math.max(rows, size) * Number.EPSILON * largest;
-  const rank = values.filter((value) => value > tolerance).length;
-  const condition = rank < size ? Number.POSITIVE_INFINITY : largest / values[size - 1]!;
-  const inverse = rank < size ? truncatedInverse(svd, rank) : factors.upperInverse();
-  const unscaled = (answer: Float64Array): Float64Array =>
-    answer.map((value, k) => value / scales[k]!);
+  const { rank, condition, inverse, nullSpace } = decomposed(factors);
+  const ofZeros = new Float64Array(rows);
+  const halves = scaled.map((high, k) => {
+    const low = lowParts?.[k];
+    return { high, low: low ? scaledBy(low, scales[k]!) : ofZeros };
+  });
   return {
     rows,
     columns: size,
     rank,
     condition,
     solve(rhs) {
-      if (rank === size) {
-        const low = lowParts?.map((column, k) => column.map((value) => value / scales[k]!));
-        return unscaled(refined(factors, scaled, low, rhs));
-      }
-      return unscaled(product(inverse, factors.rotated(rhs)));
+      checkShape([rhs], rows);
+      const scale = powerOfTwoNear(rhs);
+      const right = scaledBy(rhs, scale);
+      const answer =
+        rank === size
+          ? refined(factors, inverse, halves, right)
+          : product(inverse, factors.rotated(right));
+      return answer.map((value, k) => value * (scale / scales[k]!));
     },
     pseudoInverse: () => scaledRows(inverse, factors, scales),
-    nullSpace: () =>
-      Array.from({ length: size - rank }, (_, m) =>
-        Float64Array.from(
-          columns,
-          (__, k) => svd.rightSingularVectors.get(k, rank + m) / scales[k]!,
-        ),
-      ),
+    nullSpace: () => nullSpace.map((vector) => vector.map((value, k) => value / scales[k]!)),
   };
 }
 
-function powerOfTwoScale(column: Float64Array): number {
-  let largest = 0;
-  for (const value of column) largest = Math.max(largest, Math.abs(value));
-  if (!(largest > 0) || !Number.isFinite(largest)) return 1;
-  let sum = 0;
-  for (const value of column) sum += (value / largest) ** 2;
-  const exponent = Math.round(Math.log2(largest) + Math.log2(sum) / 2);
-  // neither the scale nor its inverse may overflow; a column below 1e-301 then counts as empty
-  return 2 ** Math.min(Math.max(exponent, -1000), 1000);
+function checkShape(columns: readonly Float64Array[], rows: number): void {
+  if (columns.length === 0) throw new RangeError('least squares needs at least one column');
+  for (const column of columns) {
+    if (column.length !== rows) {
+      throw new RangeError(`least squares needs columns of ${rows} rows, not ${column.length}`);
+    }
+    if (!column.every(Number.isFinite)) throw new RangeError('least squares needs finite numbers');
+  }
 }
 
-/** V S⁺ Uᵀ with only the first `rank` singular values. */
-function truncatedInverse(svd: SingularValueDecomposition, rank: number): Matrix {
+interface Decomposed {
+  readonly rank: number;
+  readonly condition: number;
+  /** R⁻¹, or R⁺ of least norm in the columns of norm 1; by rows. */
+  readonly inverse: readonly Float64Array[];
+  /** In the coordinates of the factorised columns. */
+  readonly nullSpace: readonly Float64Array[];
+}
+
+/** Rank, condition and inverse of R by the singular values of R with its columns at norm 1. */
+function decomposed(factors: HouseholderFactors): Decomposed {
+  const upper = factors.upper();
+  const size = factors.columns;
+  const norms = upper.map((_, k) => {
+    const norm = Math.hypot(...upper.map((row) => row[k]!));
+    // they are about 1 but for columns of zeros and those below 1e-301, which count as zeros
+    return norm > 0.5 ? norm : 1;
+  });
+  const svd = new SingularValueDecomposition(
+    new Matrix(upper.map((row) => row.map((value, k) => value / norms[k]!))),
+  );
+  const values = svd.diagonal;
+  const largest = values[0] ?? 0;
+  const tolerance = Math.max(factors.rows, size) * Number.EPSILON * largest;
+  const rank = values.filter((value) => value > tolerance).length;
+  return {
+    rank,
+    condition: rank < size ? Number.POSITIVE_INFINITY : largest / values[size - 1]!,
+    inverse: rank < size ? truncatedInverse(svd, rank, norms) : factors.upperInverse(),
+    nullSpace: Array.from({ length: size - rank }, (_, m) =>
+      Float64Array.from(norms, (norm, k) => svd.rightSingularVectors.get(k, rank + m) / norm),
+    ),
+  };
+}
+
+/** D⁻¹ V S⁺ Uᵀ with only the first `rank` singular values, D the norms of the columns. */
+function truncatedInverse(
+  svd: SingularValueDecomposition,
+  rank: number,
+  norms: readonly number[],
+): Float64Array[] {
   const { leftSingularVectors: u, rightSingularVectors: v, diagonal } = svd;
-  const size = diagonal.length;
-  const inverse = Matrix.zeros(size, size);
-  for (let m = 0; m < rank; m++) {
-    for (let k = 0; k < size; k++) {
-      for (let l = 0; l < size; l++) {
-        inverse.set(k, l, inverse.get(k, l) + (v.get(k, m) * u.get(l, m)) / diagonal[m]!);
-      }
-    }
-  }
-  return inverse;
+  return norms.map((norm, k) =>
+    Float64Array.from(norms, (_, l) => {
+      let sum = 0;
+      for (let m = 0; m < rank; m++) sum += (v.get(k, m) * u.get(l, m)) / diagonal[m]!;
+      return sum / norm;
+    }),
+  );
 }
 
 /** matrix · (first entries of vector). */
-function product(matrix: Matrix, vector: Float64Array): Float64Array {
-  return Float64Array.from({ length: matrix.rows }, (_, k) => {
-    let sum = 0;
-    for (let l = 0; l < matrix.columns; l++) sum += matrix.get(k, l) * vector[l]!;
-    return sum;
-  });
+function product(matrix: readonly Float64Array[], vector: Float64Array): Float64Array {
+  return Float64Array.from(matrix, (row) =>
+    row.reduce((sum, value, l) => sum + value * vector[l]!, 0),
+  );
 }
 
 function scaledRows(
-  inverse: Matrix,
+  inverse: readonly Float64Array[],
   factors: HouseholderFactors,
   scales: readonly number[],
 ): Float64Array[] {
@@ -111,7 +142,7 @@ function scaledRows(
   return scales.map((scale, k) => {
     const row = new Float64Array(factors.rows);
     for (const [m, direction] of basis.entries()) {
-      const weight = inverse.get(k, m) / scale;
+      const weight = inverse[k]![m]! / scale;
       if (weight === 0) continue;
       for (let i = 0; i < row.length; i++) row[i]! += weight * direction[i]!;
     }

@@ -1,84 +1,67 @@
-import type { Matrix } from 'ml-matrix';
-import { Accumulator, type DoubleDoubleVector } from './double-double.ts';
+import { addTo, type DoubleDoubleVector, dotProduct, subtractMultiple } from './double-double.ts';
 import type { HouseholderFactors } from './householder.ts';
 
 const mostRounds = 30;
+/** Beside a right-hand side of 1, so that answers 1e8 times smaller still have all their digits. */
+const settled = 2 ** -80;
 
 /**
  * Least squares refined on the augmented system r + A x = b, Aᵀ r = 0: residual *and* solution are
- * corrected, both residuals in double-double, until the solution stands in its last digit
+ * corrected, both residuals in double-double, until the next correction would be below `settled`
  * (Björck, BIT 7 (1967) 257; Golub and Van Loan, 5.3.8). Exact to double as long as the condition
- * times the unit roundoff stays below 1.
+ * times the unit roundoff stays well below 1; where it does not, the corrections do not shrink and
+ * the plain answer of the factors stands.
  *
- * @param columns scaled columns of A, full rank; `low` their low halves or undefined
+ * @param inverse R⁻¹ by rows
+ * @param columns columns of A, full rank, scaled to norm about 1
+ * @param rhs scaled to norm about 1
  */
 export function refined(
   factors: HouseholderFactors,
-  columns: readonly Float64Array[],
-  low: readonly Float64Array[] | undefined,
+  inverse: readonly Float64Array[],
+  columns: readonly DoubleDoubleVector[],
   rhs: Float64Array,
 ): Float64Array {
-  const inverse = factors.upperInverse();
-  const x = zeros(columns.length);
-  const r = zeros(rhs.length);
-  let before = Number.POSITIVE_INFINITY;
+  const first = corrections(factors, inverse, rhs, new Float64Array(columns.length));
+  const x = { high: first.dx, low: new Float64Array(columns.length) };
+  const r = { high: first.dr, low: new Float64Array(rhs.length) };
+  let before = 1;
   for (let round = 0; round < mostRounds; round++) {
-    const f = outerResidual(columns, low, rhs, x, r);
-    const g = innerResidual(columns, low, r);
+    const f = outerResidual(columns, rhs, x, r);
+    const g = Float64Array.from(columns, (column) => -dotProduct(column, r));
     const { dx, dr } = corrections(factors, inverse, f, g);
-    const change = relativeChange(x, dx);
-    // it converges by a factor a round; where it no longer does, more rounds only stir the last digit
-    if (round > 1 && change >= before / 2) break;
+    const size = largest(dx);
+    // the answer itself may be 0, the right-hand side is about 1
+    const change = size / Math.max(largest(x.high), 1);
+    // they shrink by one factor each round; once they no longer do, they are noise
+    if (size === 0 || !(change < before / 2)) break;
     addTo(x, dx);
     addTo(r, dr);
-    if (change < Number.EPSILON / 8) break;
+    if (change * (change / before) < settled) break;
     before = change;
   }
   return x.high;
 }
 
-function zeros(length: number): DoubleDoubleVector {
-  return { high: new Float64Array(length), low: new Float64Array(length) };
-}
-
-/** b - r - A x. */
+/** b - r - A x, rounded to doubles at the end. */
 function outerResidual(
-  columns: readonly Float64Array[],
-  low: readonly Float64Array[] | undefined,
+  columns: readonly DoubleDoubleVector[],
   rhs: Float64Array,
   x: DoubleDoubleVector,
   r: DoubleDoubleVector,
 ): Float64Array {
-  return rhs.map((value, i) => {
-    const sum = new Accumulator();
-    sum.add(value, 0);
-    sum.add(-r.high[i]!, -r.low[i]!);
-    for (const [k, column] of columns.entries()) {
-      sum.addProduct(-column[i]!, -(low?.[k]?.[i] ?? 0), x.high[k]!, x.low[k]!);
-    }
-    return sum.high;
-  });
-}
-
-/** -Aᵀ r. */
-function innerResidual(
-  columns: readonly Float64Array[],
-  low: readonly Float64Array[] | undefined,
-  r: DoubleDoubleVector,
-): Float64Array {
-  return Float64Array.from(columns, (column, k) => {
-    const sum = new Accumulator();
-    for (const [i, value] of column.entries()) {
-      sum.addProduct(-value, -(low?.[k]?.[i] ?? 0), r.high[i]!, r.low[i]!);
-    }
-    return sum.high;
-  });
+  const left = { high: r.high.map((value) => -value), low: r.low.map((value) => -value) };
+  addTo(left, rhs);
+  for (const [k, column] of columns.entries()) {
+    subtractMultiple(left, column, x.high[k]!, x.low[k]!);
+  }
+  return left.high;
 }
 
 /** Solves [I A; Aᵀ 0] [dr; dx] = [f; g] with the factors at hand. */
 function corrections(
   factors: HouseholderFactors,
-  inverse: Matrix,
+  inverse: readonly Float64Array[],
   f: Float64Array,
   g: Float64Array,
 ): { dx: Float64Array; dr: Float64Array } {
@@ -86,31 +69,18 @@ function corrections(
   const d = factors.rotated(f);
   const h = new Float64Array(size);
   for (let k = 0; k < size; k++) {
-    for (let l = 0; l <= k; l++) h[k]! += inverse.get(l, k) * g[l]!;
+    for (let l = 0; l <= k; l++) h[k]! += inverse[l]![k]! * g[l]!;
   }
   const dx = new Float64Array(size);
   for (let k = 0; k < size; k++) {
-    for (let l = k; l < size; l++) dx[k]! += inverse.get(k, l) * (d[l]! - h[l]!);
+    for (let l = k; l < size; l++) dx[k]! += inverse[k]![l]! * (d[l]! - h[l]!);
   }
   d.set(h);
   return { dx, dr: factors.rotatedBack(d) };
 }
 
-function addTo(vector: DoubleDoubleVector, change: Float64Array): void {
-  for (let k = 0; k < change.length; k++) {
-    const sum = new Accumulator();
-    sum.add(vector.high[k]!, vector.low[k]!);
-    sum.add(change[k]!, 0);
-    vector.high[k] = sum.high;
-    vector.low[k] = sum.low;
-  }
-}
-
-function relativeChange(x: DoubleDoubleVector, dx: Float64Array): number {
-  let largest = 0;
-  for (const [k, change] of dx.entries()) {
-    if (change === 0) continue;
-    largest = Math.max(largest, Math.abs(change) / (Math.abs(x.high[k]!) || Math.abs(change)));
-  }
-  return largest;
+function largest(vector: Float64Array): number {
+  let most = 0;
+  for (const value of vector) most = Math.max(most, Math.abs(value));
+  return most;
 }
