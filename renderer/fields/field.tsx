@@ -12,6 +12,9 @@ interface FieldProps {
   readonly title?: string;
 }
 
+/** What a sheet takes as a text is far longer; no cell needs it. */
+const longestEntry = 2000;
+
 /**
  * A cell to type in: takes effect on Enter or when it is left; Escape puts back what was there. What
  * cannot be taken stays in the cell with the reason under it, and the sheet stays as it was.
@@ -50,6 +53,8 @@ export function Field({
       <input
         type="text"
         aria-label={label}
+        maxLength={longestEntry}
+        data-drafting={draft === null || draft === value ? undefined : ''}
         aria-invalid={trouble !== null || undefined}
         aria-describedby={trouble === null ? undefined : id}
         data-needed={isNeeded === true && value === '' ? '' : undefined}

@@ -7,6 +7,7 @@ import {
   productSpecies,
   type Reading,
   type Sheet,
+  speciesName,
 } from '../../analysis/index.ts';
 import type { OpenedFile } from '../../main/desktop/channels.ts';
 import { notify } from '../state/notices.ts';
@@ -39,33 +40,78 @@ export async function addExports(
   );
   tellWhatWasRead(readings, files.length);
   if (spectra.length === 0) return;
-  if (destination === null) pending.value = spectra;
+  // another drop may come while the question still stands
+  if (destination === null) pending.value = [...(pending.value ?? []), ...spectra];
   else place(spectra, destination);
 }
 
 export function place(spectra: readonly EmbeddedSpectrum[], destination: Destination): void {
   pending.value = null;
-  const count = spectra.length === 1 ? '1 spectrum' : `${spectra.length} spectra`;
+  const count = countOf(spectra);
   if (destination === 'aliquots') {
-    const [run] = sheet.value.runs ?? [];
-    change(`add ${count} as aliquots`, (before) => addAliquots(before, spectra, run?.id ?? null));
-  } else {
-    change(`add ${count} as standards`, (before) =>
-      spectra.reduce(
-        (next, spectrum) => addStandards(next, [spectrum], likelySpecies(next, spectrum)),
-        before,
-      ),
-    );
+    // which run a crude is from is never guessed: aliquots of one run count as replicates
+    change(`add ${count} as aliquots`, (before) => addAliquots(before, spectra, null));
+    return;
   }
+  const guesses = spectra.map((spectrum) => ({
+    spectrum,
+    ...likelySpecies(sheet.value, spectrum),
+  }));
+  change(`add ${count} as standards`, (before) =>
+    guesses.reduce(
+      (next, { spectrum, species }) => addStandards(next, [spectrum], species),
+      before,
+    ),
+  );
+  notify(
+    'news',
+    'Of which species each standard is was guessed; look at the column "of":',
+    guesses.map(({ spectrum: { name, source }, species, isNamed }) => {
+      const why = isNamed ? 'its name says so' : 'nothing in its name says which';
+      return `${source?.file ?? ''} · ${name}: ${speciesName(sheet.value, species)} (${why})`;
+    }),
+  );
 }
 
-/** A species whose id or name stands in the heading or the file name; else the first product. A guess that is shown. */
-export function likelySpecies(into: Sheet, spectrum: EmbeddedSpectrum): string {
-  const words = `${spectrum.source?.file ?? ''} ${spectrum.name}`.toLowerCase();
-  const named = into.species.find(({ id, name }) =>
-    [id, name ?? ''].some((word) => word.length > 1 && words.includes(word.toLowerCase())),
-  );
-  return (named ?? productSpecies(into)[0] ?? into.species[0])?.id ?? '';
+/** The question where they belong was put aside: said, so that nothing vanishes in silence. */
+export function leaveOut(spectra: readonly EmbeddedSpectrum[]): void {
+  pending.value = null;
+  notify('news', `${countOf(spectra)} left out; drop the files again to take them in.`);
+}
+
+function countOf(spectra: readonly EmbeddedSpectrum[]): string {
+  return spectra.length === 1 ? '1 spectrum' : `${spectra.length} spectra`;
+}
+
+interface Guess {
+  readonly species: string;
+  readonly isNamed: boolean;
+}
+
+/**
+ * The species whose id or name stands as a word of its own in the heading or the file name, the
+ * longest such; else the first product.
+ */
+export function likelySpecies(into: Sheet, spectrum: EmbeddedSpectrum): Guess {
+  const words = ` ${spectrum.source?.file ?? ''} ${spectrum.name} `.toLowerCase();
+  let best = { species: '', length: 0 };
+  for (const { id, name = '' } of into.species) {
+    for (const word of [id, name].map((each) => each.trim().toLowerCase())) {
+      if (word.length > best.length && standsIn(words, word))
+        best = { species: id, length: word.length };
+    }
+  }
+  if (best.length > 0) return { species: best.species, isNamed: true };
+  return { species: (productSpecies(into)[0] ?? into.species[0])?.id ?? '', isNamed: false };
+}
+
+/** True where the word stands with no letter or digit at either end of it. */
+function standsIn(words: string, word: string): boolean {
+  const isPart = (sign: string | undefined): boolean => /[\p{L}\p{N}]/u.test(sign ?? ' ');
+  for (let at = words.indexOf(word); at !== -1; at = words.indexOf(word, at + 1)) {
+    if (!isPart(words[at - 1]) && !isPart(words[at + word.length])) return true;
+  }
+  return false;
 }
 
 async function readAll(files: readonly OpenedFile[]): Promise<Reading[]> {

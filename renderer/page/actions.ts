@@ -14,7 +14,6 @@ import type { MenuCommand, OpenedFile } from '../../main/desktop/channels.ts';
 import { addExports } from '../import/imports.ts';
 import type { SheetSource } from '../platform/platform.ts';
 import { platform } from '../platform/this-platform.ts';
-import { clearKept } from '../state/keep.ts';
 import { attempt, notify, tellRefusal } from '../state/notices.ts';
 import {
   change,
@@ -29,7 +28,7 @@ import {
   undo,
 } from '../state/store.ts';
 import { readFileBytes, reportTexts } from '../worker/analysis-client.ts';
-import { awaited } from './awaited-files.ts';
+import { awaited, matchAwaited } from './awaited-files.ts';
 import { confirmLoss } from './confirm-loss.ts';
 import { sampleSource } from './sample.ts';
 
@@ -43,7 +42,7 @@ export const actions: Record<MenuCommand, () => Promise<void>> = {
       if (source) await openSource(source);
     }),
   'open-sample': () => replacing(async () => openSource(await sampleSource())),
-  'add-exports': async () => addExports(await platform.openExports(), null),
+  'add-exports': async () => addExports(await takeAwaited(await platform.openExports()), null),
   save: () => save(saveHandle.value),
   'save-as': () => save(null),
   'export-csv': () => exported('csv'),
@@ -58,11 +57,25 @@ export const actions: Record<MenuCommand, () => Promise<void>> = {
 };
 
 export function run(command: MenuCommand): void {
+  const cell = document.activeElement;
+  if (cell instanceof HTMLElement && cell.matches('input[data-drafting]')) {
+    if (command === 'undo' || command === 'redo') {
+      // in a cell that is being typed in, undo belongs to the typing; there is no newer way to ask for it
+      document.execCommand(command);
+      return;
+    }
+    // what is being typed takes effect before it is saved
+    cell.blur();
+  }
   void attempt(actions[command]);
 }
 
-/** Opens a sheet with the exports that came with it; asks for those that did not. */
-export async function openSource(source: SheetSource): Promise<void> {
+/** Opens a sheet in place of the one on the page, which may have to be let go first. */
+export const openInstead = (source: SheetSource): Promise<void> =>
+  replacing(() => openSource(source));
+
+/** Opens a sheet with the exports that came with it; the page asks for those that did not. */
+async function openSource(source: SheetSource): Promise<void> {
   const { sheet: opened, warnings } = openSheet(source.text, source.name);
   const files = new Map(source.files.map((file) => [file.name, file]));
   const readings = await readNamed(opened, filesOf(opened), files);
@@ -71,23 +84,20 @@ export async function openSource(source: SheetSource): Promise<void> {
     return reading ? embeddedFrom(reading, trace) : null;
   });
   replaceSheet(next, { name: source.name, handle: source.handle, isSaved: true });
-  awaited.value = filesOf(next);
   if (warnings.length > 0) notify('news', 'The sheet holds what is not known here:', warnings);
   tellRefused(readings);
+  if (source.missing.length > 0) {
+    notify(
+      'refusal',
+      'Files that the sheet names could not be had:',
+      source.missing.map(({ path, why }) => `${path}: ${why}`),
+    );
+  }
 }
 
 /** Takes in files that the open sheet waits for, by their names; gives back those it does not. */
 export async function takeAwaited(files: readonly OpenedFile[]): Promise<readonly OpenedFile[]> {
-  const waiting = awaited.value;
-  if (waiting.length === 0) return files;
-  const lastPart = (name: string): string => name.split(/[\\/]/).at(-1) ?? name;
-  const byName = new Map(files.map((file) => [lastPart(file.name), file]));
-  const found = new Map(
-    waiting.flatMap((name) => {
-      const file = byName.get(lastPart(name));
-      return file ? [[name, file] as const] : [];
-    }),
-  );
+  const { found, ambiguous, rest } = matchAwaited(awaited.value, files);
   const readings = await readNamed(sheet.value, [...found.keys()], found);
   if (readings.size > 0) {
     change('take in files', (before) =>
@@ -96,11 +106,16 @@ export async function takeAwaited(files: readonly OpenedFile[]): Promise<readonl
         return reading ? embeddedFrom(reading, trace) : null;
       }),
     );
-    awaited.value = filesOf(sheet.value);
   }
   tellRefused(readings);
-  const used = new Set(found.values());
-  return files.filter((file) => !used.has(file));
+  if (ambiguous.length > 0) {
+    notify(
+      'refusal',
+      'The sheet waits for several files of these names, in different folders, and which of them was given cannot be told. Give the files different names in the sheet, or open it in the desktop program, which finds them by their folders.',
+      ambiguous,
+    );
+  }
+  return rest;
 }
 
 async function readNamed(
@@ -133,7 +148,6 @@ async function save(handle: unknown): Promise<void> {
   const saved = await platform.saveSheet(sheetText(written), handle, `${baseName()}.sheet.json`);
   if (!saved) return;
   markSaved(written, saved.name, saved.handle);
-  await clearKept();
   notify('news', `Saved as ${saved.name}.`);
 }
 

@@ -27,6 +27,7 @@ import {
   quantification,
   sheet,
 } from '../state/store.ts';
+import { run } from './actions.ts';
 import { awaited } from './awaited-files.ts';
 import { Dialogs } from './dialogs.tsx';
 import { isDragging } from './drops.ts';
@@ -121,7 +122,10 @@ function Awaited() {
       <div>
         <p>
           The sheet names {files.length === 1 ? 'a file that is' : `${files.length} files that are`}{' '}
-          not in it. Drop {files.length === 1 ? 'it' : 'them'} on this page:
+          not in it. Drop {files.length === 1 ? 'it' : 'them'} on this page, or{' '}
+          <button type="button" class="quiet inline" onClick={() => run('add-exports')}>
+            choose {files.length === 1 ? 'it' : 'them'}
+          </button>
         </p>
         <ul>
           {files.map((file) => (

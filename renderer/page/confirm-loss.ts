@@ -6,6 +6,8 @@ export const question = signal<{ readonly answer: (goOn: boolean) => void } | nu
 /** Asks whether unsaved changes may go. */
 export function confirmLoss(): Promise<boolean> {
   return new Promise((resolve) => {
+    // one question at a time: the earlier one counts as declined
+    question.value?.answer(false);
     question.value = {
       answer: (goOn) => {
         question.value = null;

@@ -1,6 +1,6 @@
 import type { ComponentChildren } from 'preact';
 import { useEffect, useRef } from 'preact/hooks';
-import { pending, place } from '../import/imports.ts';
+import { leaveOut, pending, place } from '../import/imports.ts';
 import { question } from './confirm-loss.ts';
 
 /** The questions that the page asks. */
@@ -16,9 +16,7 @@ export function Dialogs() {
               ? 'What is this spectrum?'
               : `What are these ${spectra.length} spectra?`
           }
-          dismiss={() => {
-            pending.value = null;
-          }}
+          dismiss={() => leaveOut(spectra)}
         >
           <ul class="dialog-list">
             {spectra.slice(0, 8).map(({ name, source }, index) => (
@@ -34,6 +32,9 @@ export function Dialogs() {
             </button>
             <button type="button" onClick={() => place(spectra, 'aliquots')}>
               Aliquots of a crude
+            </button>
+            <button type="button" class="quiet" onClick={() => leaveOut(spectra)}>
+              Leave them out
             </button>
           </div>
         </Question>
@@ -67,7 +68,10 @@ interface QuestionProps {
 function Question({ title, dismiss, children }: QuestionProps) {
   const dialog = useRef<HTMLDialogElement>(null);
   useEffect(() => {
-    dialog.current?.showModal();
+    const { current } = dialog;
+    current?.showModal();
+    // closed before it goes, so that the focus returns to where it was
+    return () => current?.close();
   }, []);
   return (
     <dialog

@@ -1,10 +1,9 @@
 import { signal } from '@preact/signals';
 import { addExports, type Destination } from '../import/imports.ts';
-import { opened, sheetSource } from '../platform/browser.ts';
-import { attempt } from '../state/notices.ts';
-import { isOpen, isUnsaved } from '../state/store.ts';
-import { openSource, run, takeAwaited } from './actions.ts';
-import { confirmLoss } from './confirm-loss.ts';
+import { openedAll, sheetSource } from '../platform/browser.ts';
+import { attempt, notify } from '../state/notices.ts';
+import { isOpen } from '../state/store.ts';
+import { actions, openInstead, takeAwaited } from './actions.ts';
 
 /** True while files hang over the page. */
 export const isDragging = signal(false);
@@ -38,9 +37,15 @@ async function dropped(files: readonly File[], destination: Destination | null):
   const sheetFile = files.find(({ name }) => name.toLowerCase().endsWith('.json'));
   const rest = files.filter((file) => file !== sheetFile);
   if (sheetFile) {
-    if (isUnsaved.value && !(await confirmLoss())) return;
-    await openSource(await sheetSource(sheetFile));
-  } else if (!isOpen.value) run('new-sheet');
-  const exports = await Promise.all(rest.map(opened));
+    await openInstead(await sheetSource(sheetFile));
+  } else if (!isOpen.value) await actions['new-sheet']();
+  const { files: exports, unreadable } = await openedAll(rest);
+  if (unreadable.length > 0) {
+    notify(
+      'refusal',
+      'These could not be read; a folder cannot be dropped, only the files in it:',
+      unreadable,
+    );
+  }
   await addExports(await takeAwaited(exports), destination);
 }

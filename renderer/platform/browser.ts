@@ -29,8 +29,7 @@ export function browserPlatform(): Platform {
       const [file] = await askForFiles({ accept: '.json', multiple: false });
       return file ? sheetSource(file) : null;
     },
-    openExports: async () =>
-      Promise.all((await askForFiles({ accept: '', multiple: true })).map(opened)),
+    openExports: async () => filesOrRefusal(await askForFiles({ accept: '', multiple: true })),
     saveSheet: async (text, handle, suggestedName) => {
       const target = isWritable(handle) ? handle : await askWhereToSave(suggestedName);
       if (target === null) return null;
@@ -57,7 +56,38 @@ export function browserPlatform(): Platform {
   };
 }
 
-export async function opened(file: File): Promise<OpenedFile> {
+interface ReadFiles {
+  readonly files: readonly OpenedFile[];
+  /** Names of those that the browser could not read: a folder, or a file that is gone or locked. */
+  readonly unreadable: readonly string[];
+}
+
+/** Reads files one after the other; one that cannot be read does not stop the others. */
+export async function openedAll(given: readonly File[]): Promise<ReadFiles> {
+  const files: OpenedFile[] = [];
+  const unreadable: string[] = [];
+  for (const file of given) {
+    try {
+      files.push(await opened(file));
+    } catch (error) {
+      if (!(error instanceof DOMException)) throw error;
+      unreadable.push(file.name);
+    }
+  }
+  return { files, unreadable };
+}
+
+async function filesOrRefusal(given: readonly File[]): Promise<readonly OpenedFile[]> {
+  const { files, unreadable } = await openedAll(given);
+  if (unreadable.length === 0) return files;
+  throw new Refusal({
+    code: 'cannot-read',
+    message: `The browser could not read ${unreadable.join(', ')}; nothing was taken in.`,
+    mend: 'Look whether the files are still there and free to be read, and choose them again.',
+  });
+}
+
+async function opened(file: File): Promise<OpenedFile> {
   // past this an export is refused by its size; its first bytes are enough to say so
   const limit = 64 * 1024 * 1024 + 1;
   const part = file.size > limit ? file.slice(0, limit) : file;

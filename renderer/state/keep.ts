@@ -1,76 +1,78 @@
 import { effect } from '@preact/signals';
-import { openSheet, Refusal, type Sheet, sheetText } from '../../analysis/index.ts';
+import { openSheet, Refusal, type Sheet } from '../../analysis/index.ts';
+import type { KeptStore } from './kept-store.ts';
 import { fileName, isUnsaved, sheet } from './store.ts';
 
-/** The sheet in the making, kept in the browser's own store so that a crash loses nothing. */
+/** A sheet in the making that a page left behind when it came to its end. */
 export interface Kept {
+  /** The page that left it. */
+  readonly page: string;
   readonly sheet: Sheet;
   readonly name: string | null;
   /** ISO time at which it was kept. */
   readonly at: string;
 }
 
-const storeName = 'kept';
-const key = 'sheet';
 const delayMs = 400;
 
-/** Keeps every unsaved sheet shortly after it changes; forgets it once it is saved. */
-export function startKeeping(onTrouble: (error: unknown) => void): void {
-  let timer: ReturnType<typeof setTimeout> | undefined;
-  effect(() => {
-    const [present, unsaved, name] = [sheet.value, isUnsaved.value, fileName.value];
-    clearTimeout(timer);
-    timer = setTimeout(() => {
-      const kept = { text: sheetText(present), name, at: new Date().toISOString() };
-      (unsaved ? put(kept) : clearKept()).catch(onTrouble);
-    }, delayMs);
-  });
+interface Keeping {
+  /** Keeps at once what still waits to be kept: the page is about to go. */
+  readonly keepNow: () => Promise<void>;
 }
 
-/** What was kept and not saved; null if nothing was, or if it can no longer be read. */
-export async function keptSheet(): Promise<Kept | null> {
-  const value: unknown = await request('readonly', (store) => store.get(key));
-  if (typeof value !== 'object' || value === null) return null;
-  if (!('text' in value) || typeof value.text !== 'string') return null;
+/**
+ * Keeps this page's unsaved sheet shortly after each change, and forgets it once it is saved. Every
+ * page keeps its own: what another has left behind stays until someone takes it up or discards it.
+ */
+export function startKeeping(
+  page: string,
+  store: KeptStore,
+  onTrouble: (error: unknown) => void,
+): Keeping {
+  let timer: ReturnType<typeof setTimeout> | undefined;
+  let isTold = false;
+  const keepNow = async (): Promise<void> => {
+    clearTimeout(timer);
+    try {
+      if (isUnsaved.peek()) {
+        const [present, name] = [sheet.peek(), fileName.peek()];
+        await store.put(page, { sheet: present, name, at: new Date().toISOString() });
+      } else await store.remove(page);
+    } catch (error) {
+      // told once: it would come again with every key
+      if (!isTold) onTrouble(error);
+      isTold = true;
+    }
+  };
+  effect(() => {
+    // what is looked at here is what starts the clock again
+    void [sheet.value, isUnsaved.value, fileName.value];
+    clearTimeout(timer);
+    timer = setTimeout(() => void keepNow(), delayMs);
+  });
+  return { keepNow };
+}
+
+/** What pages that are no more have left, the newest first. What cannot be read stays where it is. */
+export async function leftBehind(
+  store: KeptStore,
+  living: ReadonlySet<string>,
+): Promise<readonly Kept[]> {
+  const kept = (await store.all())
+    .filter(([page]) => !living.has(page))
+    .flatMap(([page, value]) => keptFrom(page, value) ?? []);
+  return kept.sort((one, other) => other.at.localeCompare(one.at));
+}
+
+function keptFrom(page: string, value: unknown): Kept | null {
+  if (typeof value !== 'object' || value === null || !('sheet' in value)) return null;
   const name = 'name' in value && typeof value.name === 'string' ? value.name : null;
   const at = 'at' in value && typeof value.at === 'string' ? value.at : '';
   try {
-    return { sheet: openSheet(value.text).sheet, name, at };
+    // as strictly as a file: it may be from an older program
+    return { page, sheet: openSheet(JSON.stringify(value.sheet)).sheet, name, at };
   } catch (error) {
     if (error instanceof Refusal) return null;
     throw error;
   }
-}
-
-export async function clearKept(): Promise<void> {
-  await request('readwrite', (store) => store.delete(key));
-}
-
-async function put(kept: object): Promise<void> {
-  await request('readwrite', (store) => store.put(kept, key));
-}
-
-async function request<T>(
-  mode: IDBTransactionMode,
-  ask: (store: IDBObjectStore) => IDBRequest<T>,
-): Promise<T> {
-  const database = await openDatabase();
-  try {
-    return await promised(ask(database.transaction(storeName, mode).objectStore(storeName)));
-  } finally {
-    database.close();
-  }
-}
-
-function openDatabase(): Promise<IDBDatabase> {
-  const opening = indexedDB.open('monobis', 1);
-  opening.onupgradeneeded = () => opening.result.createObjectStore(storeName);
-  return promised(opening);
-}
-
-function promised<T>(asked: IDBRequest<T>): Promise<T> {
-  return new Promise((resolve, reject) => {
-    asked.onsuccess = () => resolve(asked.result);
-    asked.onerror = () => reject(asked.error);
-  });
 }

@@ -1,4 +1,4 @@
-import { computed, signal } from '@preact/signals';
+import { batch, computed, signal } from '@preact/signals';
 import {
   newSheet,
   type Quantification,
@@ -41,8 +41,10 @@ export const isWorking = signal(false);
 
 /** The one way in which the sheet changes. */
 export function change(label: string, edit: (sheet: Sheet) => Sheet, gesture?: string): void {
-  history.value = changed(history.value, label, edit(sheet.value), gesture);
-  opened.value = true;
+  batch(() => {
+    history.value = changed(history.value, label, edit(sheet.value), gesture);
+    opened.value = true;
+  });
 }
 
 export function undo(): void {
@@ -57,21 +59,31 @@ export function chooseAliquot(id: string): void {
   chosen.value = id;
 }
 
-/** Puts another sheet on the page; what was there is gone from the history. */
+/** Counts the sheets that the page has shown: an answer to an earlier one must not stand under a later. */
+export const sheetsShown = signal(0);
+
+/** Puts another sheet on the page; what was there is gone from the history, and its answer with it. */
 export function replaceSheet(
   next: Sheet,
   place: { readonly name: string | null; readonly handle: unknown; readonly isSaved: boolean },
 ): void {
-  history.value = begun(next);
-  opened.value = true;
-  saved.value = place.isSaved ? next : null;
-  fileName.value = place.name;
-  saveHandle.value = place.handle;
-  chosen.value = null;
+  batch(() => {
+    history.value = begun(next);
+    opened.value = true;
+    saved.value = place.isSaved ? next : null;
+    fileName.value = place.name;
+    saveHandle.value = place.handle;
+    chosen.value = null;
+    quantification.value = null;
+    obstacle.value = null;
+    sheetsShown.value += 1;
+  });
 }
 
 export function markSaved(written: Sheet, name: string, handle: unknown): void {
-  saved.value = written;
-  fileName.value = name;
-  saveHandle.value = handle;
+  batch(() => {
+    saved.value = written;
+    fileName.value = name;
+    saveHandle.value = handle;
+  });
 }

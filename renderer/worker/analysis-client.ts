@@ -1,18 +1,42 @@
-import { wrap } from 'comlink';
+import { type Remote, wrap } from 'comlink';
 import type { Quantification, Reading, ReadOptions, Sheet } from '../../analysis/index.ts';
 import type { AnalysisWorker, Outcome, ReportTexts } from './analysis.worker.ts';
 
-const worker = new Worker(new URL('./analysis.worker.ts', import.meta.url), { type: 'module' });
-const remote = wrap<AnalysisWorker>(worker);
+interface Started {
+  readonly worker: Worker;
+  readonly calls: Remote<AnalysisWorker>;
+  /** Rejects if the worker breaks, which no call of its own would ever tell. */
+  readonly broken: Promise<never>;
+}
 
-export const quantifySheet = async (sheet: Sheet): Promise<Outcome<Quantification>> =>
-  remote.quantify(sheet);
+let started: Started | null = null;
+
+function start(): Started {
+  const worker = new Worker(new URL('./analysis.worker.ts', import.meta.url), { type: 'module' });
+  const broken = new Promise<never>((_, reject) => {
+    worker.onerror = (event) => reject(new Error(event.message || 'the analysis did not start'));
+  });
+  broken.catch(() => {
+    worker.terminate();
+    if (started?.worker === worker) started = null;
+  });
+  return { worker, calls: wrap<AnalysisWorker>(worker), broken };
+}
+
+/** One call; after a break the next one gets a worker of its own. */
+async function asked<T>(call: (calls: Remote<AnalysisWorker>) => Promise<T>): Promise<T> {
+  started ??= start();
+  return Promise.race([call(started.calls), started.broken]);
+}
+
+export const quantifySheet = (sheet: Sheet): Promise<Outcome<Quantification>> =>
+  asked(async (calls) => calls.quantify(sheet));
 
 export const readFileBytes = (
   name: string,
   bytes: Uint8Array,
   options: ReadOptions = {},
-): Promise<Reading> => remote.read({ name, bytes }, options);
+): Promise<Reading> => asked(async (calls) => calls.read({ name, bytes }, options));
 
-export const reportTexts = async (sheet: Sheet): Promise<Outcome<ReportTexts>> =>
-  remote.report(sheet, new Date().toISOString());
+export const reportTexts = (sheet: Sheet): Promise<Outcome<ReportTexts>> =>
+  asked(async (calls) => calls.report(sheet, new Date().toISOString()));
