@@ -1,10 +1,20 @@
 import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
-import { Accumulator, product } from '../../../analysis/unmixing/double-double.ts';
+import {
+  addTo,
+  type DoubleDoubleVector,
+  dotProduct,
+  product,
+  subtractMultiple,
+} from '../../../analysis/unmixing/double-double.ts';
 
 // Whole numbers up to 2^53 are doubles, and BigInt knows their sums and products without rounding.
 const largest = 2 ** 53 - 1;
 const whole = fc.integer({ min: -largest, max: largest });
+
+function vector(...values: readonly number[]): DoubleDoubleVector {
+  return { high: Float64Array.from(values), low: new Float64Array(values.length) };
+}
 
 function exact(high: number, low: number): bigint {
   return BigInt(high) + BigInt(low);
@@ -28,31 +38,45 @@ describe('arithmetic on pairs of doubles', () => {
     fc.assert(
       fc.property(whole, whole, (a, b) => {
         const [high, low] = product(a, 0, b, 0);
-        expect(high + low).toBe(high);
-        expect(high).toBe(a * b);
+        // not toBe: a zero may come out with either sign
+        expect(high + low === high && high === a * b).toBe(true);
       }),
     );
   });
 
-  it('adds products to some 30 digits of the largest, however much cancels', () => {
+  it('sums products to some 30 digits of the largest, however much cancels', () => {
     fc.assert(
       fc.property(
         fc.array(fc.tuple(whole, whole), { minLength: 1, maxLength: 20 }),
         whole,
         (terms, rest) => {
           // every product comes with its opposite: only `rest` should be left
-          const sum = new Accumulator();
-          sum.add(rest, 0);
-          for (const [a, b] of terms) sum.addProduct(a, 0, b, 0);
-          for (const [a, b] of terms) sum.addProduct(-a, 0, b, 0);
-          const total = terms.reduce((so, [a, b]) => so + size(BigInt(a) * BigInt(b)), 0n);
-          const error = Math.abs(sum.high + sum.low - rest);
-          // each of up to 41 additions is right to some 2^-103 of the sum so far
-          expect(error).toBeLessThanOrEqual(
-            41 * 2 ** -103 * Number(total) + Number.EPSILON * Math.abs(rest),
-          );
+          const left = [rest, ...terms.map(([a]) => a), ...terms.map(([a]) => -a)];
+          const right = [1, ...terms.map(([, b]) => b), ...terms.map(([, b]) => b)];
+          const total = terms.reduce((sum, [a, b]) => sum + size(BigInt(a) * BigInt(b)), 0n);
+          // each of up to 41 additions is right to some 2^-103 of the sum so far; then one rounding
+          const tolerance = 41 * 2 ** -103 * Number(total) + Number.EPSILON * Math.abs(rest);
+          const sum = dotProduct(vector(...left), vector(...right));
+          expect(Math.abs(sum - rest)).toBeLessThanOrEqual(tolerance);
         },
       ),
+    );
+  });
+
+  it('subtracts a multiple without losing what is left', () => {
+    fc.assert(
+      fc.property(whole, whole, whole, (value, factor, rest) => {
+        // (value·factor + rest) - value·factor, the first as a double-double
+        const [high, low] = product(value, 0, factor, 0);
+        const sum = { high: Float64Array.of(high), low: Float64Array.of(low) };
+        addTo(sum, Float64Array.of(rest));
+        subtractMultiple(sum, vector(value), factor, 0);
+        const left = (sum.high[0] ?? Number.NaN) + (sum.low[0] ?? Number.NaN);
+        // two additions, each right to some 2^-103 of the product
+        const tolerance =
+          4 * 2 ** -103 * Math.abs(value * factor) + Number.EPSILON * Math.abs(rest);
+        expect(Math.abs(left - rest)).toBeLessThanOrEqual(tolerance);
+      }),
     );
   });
 
@@ -70,11 +94,7 @@ describe('arithmetic on pairs of doubles', () => {
   });
 
   it('keeps what a double would lose', () => {
-    const sum = new Accumulator();
-    sum.add(1e16, 0);
-    sum.add(1, 0);
-    sum.add(-1e16, 0);
-    expect(sum.high).toBe(1);
+    expect(dotProduct(vector(1e16, 1, -1e16), vector(1, 1, 1))).toBe(1);
     expect(1e16 + 1 - 1e16).not.toBe(1);
   });
 });
