@@ -3,6 +3,29 @@ export function escaped(text: string): string {
   return text.replace(/[&<>"']/g, (sign) => `&#${sign.charCodeAt(0)};`);
 }
 
+const longestPiece = 28;
+
+/** Text as `escaped` has it, with places where it may break: after joints of names and paths, and within what has none. */
+export function breakable(text: string): string {
+  let sinceBreak = 0;
+  const pieces = Array.from(text, (sign) => {
+    sinceBreak = sign === ' ' ? 0 : sinceBreak + 1;
+    const isJoint = /[/\\_.,;:)-]/.test(sign) && sinceBreak > 8;
+    if (!isJoint && sinceBreak < longestPiece) return escaped(sign);
+    sinceBreak = 0;
+    return `${escaped(sign)}<wbr>`;
+  });
+  return pieces.join('');
+}
+
+/** Text as a string of a style sheet: all but plain letters, digits and spaces by number, so that it cannot end the string or the sheet. */
+export function cssString(text: string): string {
+  const signs = Array.from(text, (sign) =>
+    /[a-zA-Z0-9 ]/.test(sign) ? sign : `\\${(sign.codePointAt(0) ?? 32).toString(16)} `,
+  );
+  return `"${signs.join('')}"`;
+}
+
 export type ColumnKind = 'left' | 'right' | 'interval';
 
 const classOf: Readonly<Record<ColumnKind, string>> = {
@@ -21,5 +44,7 @@ export function htmlTable(
     `<${tag}${classOf[align[column] ?? 'left']}${tag === 'th' ? ' scope="col"' : ''}>${text}</${tag}>`;
   const line = (tag: 'th' | 'td', cells: readonly string[]): string =>
     `<tr>${cells.map((text, column) => cell(tag, text, column)).join('')}</tr>`;
-  return `<table><thead>${line('th', headings)}</thead><tbody>${rows.map((row) => line('td', row)).join('')}</tbody></table>`;
+  // a short table is kept on one page; a longer one repeats its heading
+  const kind = rows.length <= 6 ? ' class="keep"' : '';
+  return `<table${kind}><thead>${line('th', headings)}</thead><tbody>${rows.map((row) => line('td', row)).join('')}</tbody></table>`;
 }

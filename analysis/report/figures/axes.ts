@@ -1,4 +1,5 @@
 import { escaped } from '../html.ts';
+import { givenText } from '../numbers.ts';
 
 /** A rectangle on the page and what it shows, for figures as vectors. */
 export interface Panel {
@@ -36,11 +37,11 @@ export function axes(panel: Panel, xTitle: string | null, yTitle: string, yTicks
   const bottom = top + height;
   const horizontal = ticks(panel.y, yTicks).map((value) => {
     const y = yAt(panel, value).toFixed(1);
-    return `<line class="grid" x1="${left}" x2="${left + width}" y1="${y}" y2="${y}"/><text class="tick" x="${left - 6}" y="${y}" text-anchor="end" dy="0.32em">${tickText(value)}</text>`;
+    return `<line class="grid" x1="${left}" x2="${left + width}" y1="${y}" y2="${y}"/><text class="tick" x="${left - 6}" y="${y}" text-anchor="end" dy="0.32em">${givenText(value)}</text>`;
   });
   const vertical = ticks(panel.x, 6).map((value) => {
     const x = xAt(panel, value).toFixed(1);
-    return `<line class="axis" x1="${x}" x2="${x}" y1="${bottom}" y2="${bottom + 4}"/><text class="tick" x="${x}" y="${bottom + 15}" text-anchor="middle">${tickText(value)}</text>`;
+    return `<line class="axis" x1="${x}" x2="${x}" y1="${bottom}" y2="${bottom + 4}"/><text class="tick" x="${x}" y="${bottom + 15}" text-anchor="middle">${givenText(value)}</text>`;
   });
   const middle = top + height / 2;
   return [
@@ -54,17 +55,13 @@ export function axes(panel: Panel, xTitle: string | null, yTitle: string, yTicks
   ].join('');
 }
 
-function tickText(value: number): string {
-  return String(value).replace('-', '\u2212');
-}
-
 /** Points as the "d" of a path, broken where a value is missing; clipped to the panel's ordinate. */
 export function pathOf(panel: Panel, x: Float64Array, y: Float64Array): string {
   let path = '';
   let isDrawing = false;
   for (const [i, nm] of x.entries()) {
     const value = y[i] ?? Number.NaN;
-    if (Number.isNaN(value) || nm < panel.x[0] || nm > panel.x[1]) {
+    if (!Number.isFinite(value) || nm < panel.x[0] || nm > panel.x[1]) {
       isDrawing = false;
       continue;
     }
@@ -85,8 +82,7 @@ export function areaOf(
   const there: number[] = [];
   for (const [i, nm] of x.entries()) {
     const isIn = nm >= panel.x[0] && nm <= panel.x[1];
-    if (isIn && !Number.isNaN(low[i] ?? Number.NaN) && !Number.isNaN(high[i] ?? Number.NaN))
-      there.push(i);
+    if (isIn && Number.isFinite(low[i]) && Number.isFinite(high[i])) there.push(i);
   }
   const point =
     (values: Float64Array) =>

@@ -4,11 +4,15 @@ import type { Sheet } from '../../sheet/schema.ts';
 import { type AliquotCurves, leftOut } from '../../split/results.ts';
 import { escaped } from '../html.ts';
 import { labelSpot } from '../label-spot.ts';
-import { speciesLook } from '../species-look.ts';
+import { lookOf } from '../species-look.ts';
 import { areaOf, axes, type Panel, pathOf, xAt, yAt } from './axes.ts';
+import { leftOutSvg } from './left-out.ts';
+import { residualRange, residualSvg } from './residual.ts';
 
 const width = 680;
-const height = 400;
+const height = 376;
+/** With more points than this they would touch: the measured curve is drawn as a line. */
+const mostPoints = 110;
 
 /** The measured curve on the stacked contributions, and the residual with its ±2σ band, as SVG text. */
 export function fitFigureSvg(
@@ -18,87 +22,61 @@ export function fitFigureSvg(
 ): string {
   const { wavelengthNm } = curves;
   const x = [(wavelengthNm[0] ?? 0) - 2, (wavelengthNm.at(-1) ?? 1) + 2] as const;
-  const upper: Panel = {
-    left: 54,
-    top: 22,
-    width: 616,
-    height: 236,
-    x,
-    y: absorbanceRange(curves),
-  };
-  const lower: Panel = { left: 54, top: 278, width: 616, height: 78, x, y: residualRange(curves) };
+  const frame = { left: 54, width: 618, x };
+  const upper: Panel = { ...frame, top: 22, height: 216, y: absorbanceRange(curves) };
+  const lower: Panel = { ...frame, top: 254, height: 80, y: residualRange(curves) };
   const parts = [
-    leftOutBands(curves, upper, lower),
+    leftOutSvg(curves, upper, lower),
     axes(upper, null, 'absorbance'),
     axes(lower, 'wavelength, nm', 'residual, mAU', 4),
-    stack(curves, upper),
+    stack(sheet, curves, upper),
     measured(curves, upper),
-    residual(curves, lower),
+    residualSvg(curves, lower),
     labels(sheet, curves, upper),
     brackets(doubts, upper),
   ];
   return `<svg class="figure" viewBox="0 0 ${width} ${height}" role="img" aria-label="${escaped(`Fit of aliquot ${curves.aliquot}`)}">${parts.join('')}</svg>`;
 }
 
-function stack(curves: AliquotCurves, panel: Panel): string {
+/** What the signs of the figure mean, for under it. */
+export const fitFigureCaption =
+  'Measured absorbance (dark) on the contributions of the species laid on one another; below, what is left, with the band of ±2 σ that noise explains. Hatched: left out. Triangles: beyond the strip.';
+
+function stack(sheet: Sheet, curves: AliquotCurves, panel: Panel): string {
   const { wavelengthNm, baseline, contributions } = curves;
   let below = baseline;
   return contributions
-    .map(({ absorbance }, k) => {
+    .map(({ species, absorbance }) => {
       const top = below.map((value, i) => value + (absorbance[i] ?? Number.NaN));
       const area = areaOf(panel, wavelengthNm, below, top);
       const edge = pathOf(panel, wavelengthNm, top);
-      const { colour, dash } = speciesLook(k);
+      const { colour, dash } = lookOf(sheet, species);
       below = top;
       const pattern = dash === '' ? '' : ` stroke-dasharray="${dash}"`;
-      return `<path d="${area}" fill="${colour}" fill-opacity="0.16"/><path d="${edge}" fill="none" stroke="${colour}" stroke-width="1.2"${pattern}/>`;
+      return `<path d="${area}" fill="${colour}" fill-opacity="0.16"/><path d="${edge}" fill="none" stroke="${colour}" stroke-width="1.3"${pattern}/>`;
     })
     .join('');
 }
 
-function measured(
-  { wavelengthNm, measured: values, fitted, use }: AliquotCurves,
-  panel: Panel,
-): string {
-  const used = fitted.map((value, i) => (use[i] === leftOut.used ? value : Number.NaN));
-  const points = Array.from(wavelengthNm.keys()).flatMap((i) => {
-    const [nm, value] = [wavelengthNm[i] ?? 0, values[i] ?? Number.NaN];
-    if (Number.isNaN(value) || value > panel.y[1]) return [];
-    const kind = use[i] === leftOut.used ? 'point' : 'point out';
-    return [
-      `<circle class="${kind}" cx="${xAt(panel, nm).toFixed(1)}" cy="${yAt(panel, value).toFixed(1)}" r="1.5"/>`,
-    ];
-  });
-  return `<path class="fitted" d="${pathOf(panel, wavelengthNm, used)}"/>${points.join('')}`;
-}
-
-function residual(
-  { wavelengthNm, residual: values, expectedSd, use }: AliquotCurves,
-  panel: Panel,
-): string {
-  const milli = (of: Float64Array, factor: number): Float64Array =>
-    of.map((value, i) => (use[i] === leftOut.used ? 1000 * factor * value : Number.NaN));
-  const band = areaOf(panel, wavelengthNm, milli(expectedSd, -2), milli(expectedSd, 2));
-  const line = pathOf(panel, wavelengthNm, milli(values, 1));
-  return `<path class="band" d="${band}"/><path class="fitted" d="${line}"/>`;
-}
-
-function leftOutBands({ wavelengthNm, use }: AliquotCurves, upper: Panel, lower: Panel): string {
-  const bottom = lower.top + lower.height;
+function measured(curves: AliquotCurves, panel: Panel): string {
+  const { wavelengthNm, measured: values, use } = curves;
+  const only = (isWanted: boolean): Float64Array =>
+    values.map((value, i) => {
+      const isIn = value >= panel.y[0] && value <= panel.y[1];
+      return isIn && (use[i] === leftOut.used) === isWanted ? value : Number.NaN;
+    });
+  const [used, out] = [only(true), only(false)];
+  const outside = `<path class="measured out" d="${pathOf(panel, wavelengthNm, out)}"/>`;
+  if (wavelengthNm.length > mostPoints) {
+    return `${outside}<path class="measured" d="${pathOf(panel, wavelengthNm, used)}"/>`;
+  }
   return Array.from(wavelengthNm.keys())
-    .flatMap((i) => {
-      const reason = use[i];
-      const isLost =
-        reason === leftOut.excluded ||
-        reason === leftOut.missing ||
-        reason === leftOut.aboveUpperAbsorbance;
-      if (!isLost) return [];
-      const nm = wavelengthNm[i] ?? 0;
-      const step = ((wavelengthNm[i + 1] ?? nm + 1) - nm) / 2;
-      const left = xAt(upper, nm - step);
-      return [
-        `<rect class="out" x="${left.toFixed(1)}" y="${upper.top}" width="${(xAt(upper, nm + step) - left).toFixed(1)}" height="${bottom - upper.top}"/>`,
-      ];
+    .map((i) => {
+      const value = used[i] ?? Number.NaN;
+      const shown = Number.isNaN(value) ? (out[i] ?? Number.NaN) : value;
+      if (Number.isNaN(shown)) return '';
+      const [x, y] = [xAt(panel, wavelengthNm[i] ?? 0).toFixed(1), yAt(panel, shown).toFixed(1)];
+      return `<circle class="${Number.isNaN(value) ? 'point out' : 'point'}" cx="${x}" cy="${y}" r="1.7"/>`;
     })
     .join('');
 }
@@ -113,7 +91,7 @@ function labels(sheet: Sheet, curves: AliquotCurves, panel: Panel): string {
       const isThin = (absorbance[spot.index] ?? 0) < 0.055 * panel.y[1];
       const [x, y] = [xAt(panel, spot.x), yAt(panel, spot.y)];
       const [tx, ty] = isThin ? [x + 22, y - 26] : [x, y];
-      const { colour } = speciesLook(k);
+      const { colour } = lookOf(sheet, species);
       const line = isThin
         ? `<line x1="${x.toFixed(1)}" y1="${y.toFixed(1)}" x2="${tx.toFixed(1)}" y2="${(ty + 3).toFixed(1)}" stroke="${colour}"/>`
         : '';
@@ -122,12 +100,15 @@ function labels(sheet: Sheet, curves: AliquotCurves, panel: Panel): string {
     .join('');
 }
 
+/** The wavelengths of each doubt over the figure, with its number in the list of doubts. */
 function brackets(doubts: readonly Doubt[], panel: Panel): string {
+  const within = (nm: number): number =>
+    Math.min(Math.max(xAt(panel, nm), panel.left), panel.left + panel.width);
   return doubts
     .flatMap(({ atNm = [] }, index) => {
       const marks: string[] = [];
       for (let i = 0; i + 1 < atNm.length; i += 2) {
-        const [low, high] = [xAt(panel, atNm[i] ?? 0), xAt(panel, atNm[i + 1] ?? 0)];
+        const [low, high] = [within(atNm[i] ?? 0), within(atNm[i + 1] ?? 0)];
         marks.push(
           `<line class="doubt-mark" x1="${low.toFixed(1)}" x2="${Math.max(high, low + 3).toFixed(1)}" y1="16" y2="16"/><text class="doubt-number" x="${((low + high) / 2).toFixed(1)}" y="11" text-anchor="middle">${index + 1}</text>`,
         );
@@ -143,20 +124,10 @@ function absorbanceRange({ measured: values, fitted, use }: AliquotCurves): [num
   for (const [i, reason] of use.entries()) {
     if (reason !== leftOut.used) continue;
     for (const value of [values[i] ?? 0, fitted[i] ?? 0]) {
+      if (!Number.isFinite(value)) continue;
       top = Math.max(top, value);
       bottom = Math.min(bottom, value);
     }
   }
   return [bottom - 0.02 * top, 1.06 * top];
-}
-
-function residualRange({ residual: values, expectedSd, use }: AliquotCurves): [number, number] {
-  const sizes: number[] = [];
-  for (const [i, reason] of use.entries()) {
-    if (reason === leftOut.used)
-      sizes.push(1000 * Math.max(Math.abs(values[i] ?? 0), 2 * (expectedSd[i] ?? 0)));
-  }
-  sizes.sort((a, b) => a - b);
-  const reach = 1.3 * Math.max(sizes[Math.floor(0.94 * (sizes.length - 1))] ?? 0, 0.5);
-  return [-reach, reach];
 }

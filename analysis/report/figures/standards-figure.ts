@@ -2,34 +2,74 @@ import { speciesLabel } from '../../sheet/defaults.ts';
 import type { Sheet } from '../../sheet/schema.ts';
 import type { StandardCurves } from '../../split/results.ts';
 import { escaped } from '../html.ts';
-import { speciesLook } from '../species-look.ts';
+import { lookOf } from '../species-look.ts';
 import { axes, type Panel, pathOf, xAt, yAt } from './axes.ts';
 
 /** Molar absorptivity of every species, named at its highest point away from the edges, as SVG text. */
 export function standardsFigureSvg(sheet: Sheet, standards: readonly StandardCurves[]): string {
-  let [low, high, top] = [Number.POSITIVE_INFINITY, 0, 0];
+  const panel = panelOf(standards);
+  if (!panel) return '';
+  const placed: Label[] = [];
+  const curves = standards.map(({ species, wavelengthNm, molarAbsorptivity }) => {
+    const { colour, dash } = lookOf(sheet, species);
+    const pattern = dash === '' ? '' : ` stroke-dasharray="${dash}"`;
+    const peak = peakOf(wavelengthNm, molarAbsorptivity);
+    const text = speciesLabel(sheet, species);
+    const label = freeSpot(
+      {
+        x: xAt(panel, wavelengthNm[peak] ?? panel.x[0]),
+        y: yAt(panel, Math.min(molarAbsorptivity[peak] ?? 0, panel.y[1])) - 6,
+        halfWidth: 3.2 * text.length,
+      },
+      placed,
+    );
+    placed.push(label);
+    return `<path d="${pathOf(panel, wavelengthNm, molarAbsorptivity)}" fill="none" stroke="${colour}" stroke-width="1.5"${pattern}/><text class="label" x="${label.x.toFixed(1)}" y="${label.y.toFixed(1)}" fill="${colour}" text-anchor="middle">${escaped(text)}</text>`;
+  });
+  return `<svg class="figure" viewBox="0 0 680 262" role="img" aria-label="Molar absorptivity of the standards">${axes(panel, 'wavelength, nm', 'ε, L mol⁻¹ cm⁻¹')}${curves.join('')}</svg>`;
+}
+
+function panelOf(standards: readonly StandardCurves[]): Panel | null {
+  let [low, high, bottom, top] = [Number.POSITIVE_INFINITY, 0, 0, 0];
   for (const { wavelengthNm, molarAbsorptivity } of standards) {
     low = Math.min(low, wavelengthNm[0] ?? low);
     high = Math.max(high, wavelengthNm.at(-1) ?? high);
-    for (const value of molarAbsorptivity) if (value > top) top = value;
+    for (const value of molarAbsorptivity) {
+      if (!Number.isFinite(value)) continue;
+      top = Math.max(top, value);
+      bottom = Math.min(bottom, value);
+    }
   }
-  if (!(high > low)) return '';
-  const panel: Panel = {
+  if (!(high > low)) return null;
+  return {
     left: 62,
-    top: 12,
+    top: 20,
     width: 608,
-    height: 210,
+    height: 202,
     x: [low, high],
-    y: [0, 1.06 * top || 1],
+    y: [1.06 * bottom, 1.06 * top || 1],
   };
-  const curves = standards.map(({ species, wavelengthNm, molarAbsorptivity }, k) => {
-    const { colour, dash } = speciesLook(k);
-    const pattern = dash === '' ? '' : ` stroke-dasharray="${dash}"`;
-    const peak = peakOf(wavelengthNm, molarAbsorptivity);
-    const [x, y] = [xAt(panel, wavelengthNm[peak] ?? 0), yAt(panel, molarAbsorptivity[peak] ?? 0)];
-    return `<path d="${pathOf(panel, wavelengthNm, molarAbsorptivity)}" fill="none" stroke="${colour}" stroke-width="1.5"${pattern}/><text class="label" x="${x.toFixed(1)}" y="${(y - 6).toFixed(1)}" fill="${colour}" text-anchor="middle">${escaped(speciesLabel(sheet, species))}</text>`;
-  });
-  return `<svg class="figure" viewBox="0 0 680 262" role="img" aria-label="Molar absorptivity of the standards">${axes(panel, 'wavelength, nm', 'ε, L mol⁻¹ cm⁻¹')}${curves.join('')}</svg>`;
+}
+
+interface Label {
+  readonly x: number;
+  readonly y: number;
+  readonly halfWidth: number;
+}
+
+/** Moves a label up until it lies on none of the others. */
+function freeSpot(wanted: Label, placed: readonly Label[]): Label {
+  const lineHeight = 12;
+  const isTaken = (y: number): boolean =>
+    placed.some(
+      (other) =>
+        Math.abs(other.x - wanted.x) < other.halfWidth + wanted.halfWidth &&
+        Math.abs(other.y - y) < lineHeight,
+    );
+  let { y } = wanted;
+  // each step leaves at least one label behind, so there are no more steps than labels
+  for (let step = 0; step < placed.length && isTaken(y); step++) y -= lineHeight;
+  return y < lineHeight ? wanted : { ...wanted, y };
 }
 
 function peakOf(wavelengthNm: Float64Array, values: Float64Array): number {

@@ -2,20 +2,20 @@ import { speciesName } from '../../sheet/defaults.ts';
 import type { Sheet, SheetSpectrum } from '../../sheet/schema.ts';
 import type { StandardCurves } from '../../split/results.ts';
 import { standardsFigureSvg } from '../figures/standards-figure.ts';
-import { escaped, htmlTable } from '../html.ts';
-import { figuresText, numberText } from '../numbers.ts';
-import { speciesGlyph } from '../species-glyph.ts';
+import { breakable, escaped, htmlTable } from '../html.ts';
+import { figuresText, givenText, numberText } from '../numbers.ts';
+import { speciesCell } from '../species-cell.ts';
 
 /** Reaction: the core, the arm, and every species by what is built into it. */
 export function reactionHtml(sheet: Sheet): string {
   const { core, arm, sites } = sheet.reaction;
   const rows = sheet.species.map((species) => [
-    `${speciesGlyph(sheet, species)} ${escaped(speciesName(sheet, species.id))}`,
-    escaped(species.id),
+    speciesCell(sheet, species.id),
+    breakable(species.id),
     String(species.cores),
     String(species.arms),
     species.absorbs === false ? 'no' : 'yes',
-    species.molarMassGPerMol === undefined ? '' : String(species.molarMassGPerMol),
+    species.molarMassGPerMol === undefined ? '' : givenText(species.molarMassGPerMol),
   ]);
   return `<h2>Reaction</h2><p>The core ${escaped(speciesName(sheet, core))} carries ${sites} sites, each of which takes one arm ${escaped(speciesName(sheet, arm))}.</p>${htmlTable(
     ['species', 'id', 'cores', 'arms', 'absorbs', 'molar mass, g/mol'],
@@ -32,20 +32,20 @@ export function standardsHtml(sheet: Sheet, standards: readonly StandardCurves[]
     ),
   );
   const rows = (sheet.standards ?? []).map((standard) => [
-    escaped(standard.id),
-    escaped(speciesName(sheet, standard.species)),
-    escaped(standard.stock ?? ''),
+    breakable(standard.id),
+    speciesCell(sheet, standard.species, { name: 'short' }),
+    breakable(standard.stock ?? ''),
     standard.concentrationMolPerL === undefined
       ? 'given as ε'
-      : String(Number((standard.concentrationMolPerL * 1e6).toPrecision(12))),
+      : givenText(Number((standard.concentrationMolPerL * 1e6).toPrecision(6))),
     percent(standard.relativeStandardUncertainty),
-    String(standard.pathLengthCm ?? 1),
-    escaped(fileOf(standard.spectrum)),
+    givenText(standard.pathLengthCm ?? 1),
+    breakable(fileOf(standard.spectrum)),
     factors.has(standard.id) ? numberText(100 * ((factors.get(standard.id) ?? 1) - 1), 2) : '',
   ]);
   const stocks = (sheet.stocks ?? []).map(({ id, species, relativeStandardUncertainty }) => [
-    escaped(id),
-    escaped(speciesName(sheet, species)),
+    breakable(id),
+    speciesCell(sheet, species, { name: 'short' }),
     percent(relativeStandardUncertainty),
   ]);
   const scales = standards.map(
@@ -72,21 +72,23 @@ export function standardsHtml(sheet: Sheet, standards: readonly StandardCurves[]
 /** Aliquots and the runs they are of. */
 export function aliquotsHtml(sheet: Sheet): string {
   const rows = (sheet.aliquots ?? []).map(({ id, run, pathLengthCm, dilution, spectrum }) => [
-    escaped(id),
-    escaped(run ?? ''),
-    String(pathLengthCm ?? 1),
+    breakable(id),
+    breakable(run ?? ''),
+    givenText(pathLengthCm ?? 1),
     dilution === undefined
       ? 'none'
       : dilution.factor !== undefined
-        ? String(dilution.factor)
-        : (dilution.steps ?? []).map(({ takeMl, toMl }) => `${takeMl} → ${toMl} mL`).join('; '),
+        ? givenText(dilution.factor)
+        : (dilution.steps ?? [])
+            .map(({ takeMl, toMl }) => `${givenText(takeMl)} → ${givenText(toMl)} mL`)
+            .join('; '),
     percent(dilution?.relativeStandardUncertainty),
-    escaped(fileOf(spectrum)),
+    breakable(fileOf(spectrum)),
   ]);
   const runs = (sheet.runs ?? []).map(
     ({ id, name, order, chargedMol = {}, volumeL, additionTimeMin }) => [
-      escaped(id),
-      escaped(name ?? ''),
+      breakable(id),
+      breakable(name ?? ''),
       escaped((order ?? '').replaceAll('-', ' ')),
       Object.entries(chargedMol)
         .map(
@@ -95,7 +97,7 @@ export function aliquotsHtml(sheet: Sheet): string {
         )
         .join('; '),
       volumeL === undefined ? '' : figuresText(1000 * volumeL, 4),
-      additionTimeMin === undefined ? '' : String(additionTimeMin),
+      additionTimeMin === undefined ? '' : givenText(additionTimeMin),
     ],
   );
   return [
@@ -116,7 +118,7 @@ export function aliquotsHtml(sheet: Sheet): string {
 }
 
 function percent(fraction: number | undefined): string {
-  return fraction === undefined ? 'not given' : String(Number((100 * fraction).toPrecision(6)));
+  return fraction === undefined ? 'not given' : givenText(100 * fraction);
 }
 
 function fileOf({ file, embedded, trace }: SheetSpectrum): string {
