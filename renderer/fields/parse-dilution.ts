@@ -23,7 +23,7 @@ export function parseDilution(text: string): DilutionEntry {
 
 function parseSteps(text: string): DilutionEntry {
   const steps: { takeMl: number; toMl: number }[] = [];
-  for (const part of text.split(';')) {
+  for (const part of text.split(/;|,?\s*\bthen\b/i)) {
     const [take, to, ...more] = part.split(/→|-?>/).map(number);
     if (typeof take !== 'number' || typeof to !== 'number' || more.length > 0) {
       return { ok: false, message: hint };
@@ -39,6 +39,24 @@ function parseSteps(text: string): DilutionEntry {
 function number(text: string | undefined): number | null {
   const entry = parseNumber((text ?? '').replace(/ml\s*$/i, ''));
   return entry.ok ? (entry.value ?? null) : null;
+}
+
+/**
+ * What was typed, with all that the cell does not show kept: the uncertainty, and the glassware of
+ * every step whose volumes stay.
+ */
+export function keptDilution(
+  before: SheetDilution | undefined,
+  typed: Pick<SheetDilution, 'factor' | 'steps'> | undefined,
+): SheetDilution | undefined {
+  if (!before || !typed) return typed;
+  const { factor: _, steps: earlier = [], ...rest } = before;
+  if (!typed.steps) return { ...rest, ...typed };
+  const steps = typed.steps.map((step, index) => {
+    const same = earlier[index];
+    return same?.takeMl === step.takeMl && same.toMl === step.toMl ? same : step;
+  });
+  return { ...rest, steps };
 }
 
 export function shownDilution(dilution: SheetDilution | undefined): string {

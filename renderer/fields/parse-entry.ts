@@ -33,6 +33,15 @@ export function parseNonNegative(text: string): Entry {
   return { ok: false, message: 'It must not be negative.' };
 }
 
+/** A length, "1", "0,5 cm" or "2 mm", in cm. */
+export function parsePathLength(text: string): Entry {
+  const match = /^(.*?)\s*(cm|mm)?\s*$/i.exec(text);
+  const entry = parsePositive(match?.[1] ?? '');
+  if (!entry.ok || entry.value === undefined) return entry;
+  const isMm = match?.[2]?.toLowerCase() === 'mm';
+  return { ok: true, value: isMm ? Number((entry.value / 10).toPrecision(15)) : entry.value };
+}
+
 /** A percentage, "0.4" or "0.4 %", as a fraction. */
 export function parsePercent(text: string): Entry {
   const entry = parseNonNegative(text.replace(/%\s*$/, ''));

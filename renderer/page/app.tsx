@@ -35,6 +35,7 @@ import { Empty } from './empty.tsx';
 import { Header } from './header.tsx';
 import { Notices } from './notices.tsx';
 import { SheetSection } from './sheet-section.tsx';
+import { SheetTitle } from './sheet-title.tsx';
 import { Shelf } from './shelf.tsx';
 
 /** The page: header, shelf, and the sheet from top to bottom. */
@@ -65,6 +66,7 @@ function Sections() {
   const needsFit = hasAnswer ? null : 'standards and a crude spectrum';
   return (
     <>
+      <SheetTitle />
       <Awaited />
       <SheetSection
         id="reaction"

@@ -12,7 +12,7 @@ export function Empty() {
   return (
     <div class="beginning">
       <KeptOffers />
-      <h2>From the spectrum of a crude to the mono : bis ratio</h2>
+      <h1>From the spectrum of a crude to the mono : bis ratio</h1>
       <p>
         One sheet holds the reaction, the standards, the aliquots and the answer, read from top to
         bottom. Begin where you like:

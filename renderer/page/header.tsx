@@ -1,9 +1,6 @@
 import { useEffect, useRef, useState } from 'preact/hooks';
-import { setTitle } from '../../analysis/index.ts';
-import { Field } from '../fields/field.tsx';
 import { platform } from '../platform/this-platform.ts';
 import {
-  change,
   fileName,
   isOpen,
   isUnsaved,
@@ -22,20 +19,7 @@ export function Header() {
     <header>
       <div class="page-header">
         <div class="page-title">
-          <h1>
-            <span class="wordmark">Monobis</span>
-            {isOpen.value && (
-              <Field
-                label="Title of the sheet"
-                value={sheet.value.title ?? ''}
-                placeholder="Untitled sheet"
-                commit={(text) => {
-                  change('set the title', (before) => setTitle(before, text.trim()));
-                  return null;
-                }}
-              />
-            )}
-          </h1>
+          <p class="wordmark">Monobis</p>
           {isOpen.value && (
             <p class="soft" role="status">
               {fileName.value ?? 'not saved yet'}

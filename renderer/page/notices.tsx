@@ -28,7 +28,7 @@ export function Notices() {
 const fewLines = 4;
 
 function NoticeCard({ notice }: { readonly notice: Notice }) {
-  const { id, kind, text, details = [] } = notice;
+  const { id, kind, text, details = [], copy } = notice;
   const [isWhole, setWhole] = useState(false);
   const lines = isWhole ? details : details.slice(0, fewLines);
   return (
@@ -42,6 +42,15 @@ function NoticeCard({ notice }: { readonly notice: Notice }) {
               <li key={index}>{line}</li>
             ))}
           </ul>
+        )}
+        {copy !== undefined && (
+          <button
+            type="button"
+            class="quiet"
+            onClick={() => void navigator.clipboard.writeText(copy)}
+          >
+            Copy for a report
+          </button>
         )}
         {details.length > fewLines && (
           <button

@@ -1,6 +1,8 @@
 import type { ComponentChildren } from 'preact';
 import { useState } from 'preact/hooks';
 import type { Destination } from '../import/imports.ts';
+import { sheet } from '../state/store.ts';
+import { SafePart } from './safe-part.tsx';
 
 interface SheetSectionProps {
   readonly id: string;
@@ -31,7 +33,11 @@ export function SheetSection({ id, title, summary, needs, takes, children }: She
           <p class="section-needs">Still needs {needs}.</p>
         )}
       </div>
-      {!isFolded && <div class="section-body">{children}</div>}
+      {!isFolded && (
+        <SafePart sheet={sheet.value}>
+          <div class="section-body">{children}</div>
+        </SafePart>
+      )}
     </section>
   );
 }

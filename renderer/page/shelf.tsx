@@ -1,4 +1,4 @@
-import type { SheetAliquot } from '../../analysis/index.ts';
+import { type AliquotResult, type SheetAliquot, speciesLabel } from '../../analysis/index.ts';
 import { lookClass } from '../species/species-glyph.tsx';
 import { chooseAliquot, quantification, sheet, aliquot as shown } from '../state/store.ts';
 
@@ -56,6 +56,7 @@ function ShelfAliquot({ aliquot }: { readonly aliquot: SheetAliquot }) {
             <span class="unseen">{mark}</span>
           </span>
         )}
+        {result && <span class="unseen">{splitWords(result)}</span>}
         <span class="shelf-bar" aria-hidden="true">
           {result?.split.map(({ species, fraction }) => (
             <span
@@ -68,4 +69,13 @@ function ShelfAliquot({ aliquot }: { readonly aliquot: SheetAliquot }) {
       </button>
     </li>
   );
+}
+
+/** The bar in words. */
+function splitWords({ split }: AliquotResult): string {
+  return split
+    .flatMap(({ species, fraction: { value } }) =>
+      value === null ? [] : `${speciesLabel(sheet.value, species)} ${(100 * value).toFixed(0)} %`,
+    )
+    .join(', ');
 }

@@ -1,5 +1,5 @@
 import { signal } from '@preact/signals';
-import { Refusal, type RefusalText, refusalSentence } from '../../analysis/index.ts';
+import { programName, Refusal, type RefusalText, refusalSentence } from '../../analysis/index.ts';
 
 export interface Notice {
   readonly id: number;
@@ -7,13 +7,25 @@ export interface Notice {
   readonly kind: 'news' | 'refusal' | 'fault';
   readonly text: string;
   readonly details?: readonly string[];
+  /** What a report of a fault needs, to be copied; never shown. */
+  readonly copy?: string;
 }
+
+type Telling = Pick<Notice, 'kind' | 'text' | 'details' | 'copy'>;
 
 export const notices = signal<readonly Notice[]>([]);
 let next = 1;
 
 export function notify(kind: Notice['kind'], text: string, details?: readonly string[]): void {
-  notices.value = [...notices.value, { id: next++, kind, text, ...(details ? { details } : {}) }];
+  tell({ kind, text, ...(details ? { details } : {}) });
+}
+
+/** The same words told again replace those before: a fault that comes with every key stands once. */
+function tell(telling: Telling): void {
+  const words = ({ kind, text, details = [] }: Telling): string =>
+    JSON.stringify([kind, text, details]);
+  const others = notices.value.filter((notice) => words(notice) !== words(telling));
+  notices.value = [...others, { ...telling, id: next++ }];
 }
 
 export function dismiss(id: number): void {
@@ -36,9 +48,11 @@ export async function attempt(work: () => Promise<void> | void): Promise<void> {
 
 export function tellFault(error: unknown): void {
   const details = error instanceof Error ? [`${error.name}: ${error.message}`] : [String(error)];
-  notify(
-    'fault',
-    'A fault in the program, not in your files. Your sheet is as it was; save it, and report what stands below.',
+  const stack = error instanceof Error ? (error.stack ?? '') : '';
+  tell({
+    kind: 'fault',
+    text: 'A fault in the program, not in your files. Your sheet is as it was; save it, and report what stands below.',
     details,
-  );
+    copy: [programName, ...details, stack].join('\n'),
+  });
 }

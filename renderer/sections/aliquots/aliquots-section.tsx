@@ -9,14 +9,16 @@ import {
   updateRun,
 } from '../../../analysis/index.ts';
 import { Choice, Field } from '../../fields/field.tsx';
-import { parseDilution, shownDilution } from '../../fields/parse-dilution.ts';
+import { keptDilution, parseDilution, shownDilution } from '../../fields/parse-dilution.ts';
 import {
   type Entry,
   parseNonNegative,
+  parsePathLength,
   parsePercent,
   parsePositive,
   shown,
 } from '../../fields/parse-entry.ts';
+import { LoadLine } from '../../import/load-line.tsx';
 import type { SectionProps } from '../section.ts';
 import { sourceName } from '../standards/standards-section.tsx';
 
@@ -43,10 +45,12 @@ export function AliquotsSection(props: SectionProps) {
   const runs = sheet.runs ?? [];
   if (aliquots.length === 0) {
     return (
-      <p class="empty">
-        Drop the exports of the crude here: one spectrum for each diluted aliquot. Then say from
-        which run it is and how far it was diluted.
-      </p>
+      <div class="empty">
+        <LoadLine destination="aliquots" what="the exports of the crude" />
+        <p>
+          One spectrum for each aliquot. Then say from which run it is and how far it was diluted.
+        </p>
+      </div>
     );
   }
   return (
@@ -76,6 +80,7 @@ export function AliquotsSection(props: SectionProps) {
           ))}
         </tbody>
       </table>
+      <LoadLine destination="aliquots" what="more exports of the crude" />
       {runs.length > 0 && <RunsTable {...props} runs={runs} />}
       <button
         type="button"
@@ -123,7 +128,7 @@ function AliquotRow({
           align="right"
           placeholder="1"
           value={shown(pathLengthCm)}
-          commit={committed(parsePositive, (value) =>
+          commit={committed(parsePathLength, (value) =>
             set('set path length', { pathLengthCm: value }),
           )}
         />
@@ -138,13 +143,7 @@ function AliquotRow({
           commit={(text) => {
             const entry = parseDilution(text);
             if (!entry.ok) return entry.message;
-            const kept = dilution?.relativeStandardUncertainty;
-            set('set dilution', {
-              dilution: entry.value && {
-                ...entry.value,
-                ...(kept === undefined ? {} : { relativeStandardUncertainty: kept }),
-              },
-            });
+            set('set dilution', { dilution: keptDilution(dilution, entry.value) });
             return null;
           }}
         />

@@ -1,10 +1,13 @@
 import {
   addSpecies,
+  productSpecies,
   removeSpecies,
+  renameSpecies,
   type SheetSpecies,
   setReaction,
   speciesName,
   updateSpecies,
+  whyNotRename,
 } from '../../../analysis/index.ts';
 import { Choice, Field } from '../../fields/field.tsx';
 import { parseNumber, parsePositive, shown } from '../../fields/parse-entry.ts';
@@ -17,8 +20,20 @@ export function reactionSummary({ sheet }: SectionProps): string {
 }
 
 /** What the section still needs; null when it is complete. */
-export function reactionNeeds({ sheet }: SectionProps): string | null {
-  const products = sheet.species.filter(({ cores, arms }) => cores > 0 && arms > 0);
+export function reactionNeeds({ sheet }: Pick<SectionProps, 'sheet'>): string | null {
+  const { core, arm, sites } = sheet.reaction;
+  if (core === arm) return 'a core and an arm that are two different species';
+  const built = (id: string): string | undefined => {
+    const species = sheet.species.find((each) => each.id === id);
+    return species && `${species.cores}, ${species.arms}`;
+  };
+  if (built(core) !== '1, 0') return `1 core and 0 arms in ${speciesName(sheet, core)}, the core`;
+  if (built(arm) !== '0, 1') return `0 cores and 1 arm in ${speciesName(sheet, arm)}, the arm`;
+  const products = productSpecies(sheet);
+  const crowded = products.find(({ cores, arms }) => arms > cores * sites);
+  if (crowded) {
+    return `more sites on the core, or fewer arms in ${speciesName(sheet, crowded.id)}`;
+  }
   return products.length < 2
     ? 'at least two products: species with a core and one or more arms'
     : null;
@@ -129,7 +144,19 @@ function SpeciesRow({ sheet, species, change }: RowProps) {
           />
         </span>
       </td>
-      <td class="soft">{id}</td>
+      <td class="short soft">
+        <Field
+          label={`Id of ${called}`}
+          value={id}
+          title="Short name, for labels on curves and for the command line"
+          commit={(text) => {
+            const next = text.trim();
+            const problem = whyNotRename(sheet, id, next);
+            if (problem === null) change('set id', (before) => renameSpecies(before, id, next));
+            return problem;
+          }}
+        />
+      </td>
       <td class="number">
         <Field
           label={`Cores in ${called}`}

@@ -11,10 +11,11 @@ import {
 import { Choice, Field } from '../../fields/field.tsx';
 import {
   parseConcentration,
+  parsePathLength,
   parsePercent,
-  parsePositive,
   shown,
 } from '../../fields/parse-entry.ts';
+import { LoadLine } from '../../import/load-line.tsx';
 import { StandardsPlot } from '../../plots/standards-plot.tsx';
 import { SpeciesGlyph } from '../../species/species-glyph.tsx';
 import type { SectionProps } from '../section.ts';
@@ -47,10 +48,12 @@ export function StandardsSection(props: SectionProps) {
   const stocks = sheet.stocks ?? [];
   if (standards.length === 0) {
     return (
-      <p class="empty">
-        Drop the exports of the pure standards here. Each trace becomes one line; then type its
-        concentration.
-      </p>
+      <div class="empty">
+        <LoadLine destination="standards" what="the exports of the pure standards" />
+        <p>
+          Each trace becomes one line; then say of which species it is and type its concentration.
+        </p>
+      </div>
     );
   }
   return (
@@ -85,6 +88,7 @@ export function StandardsSection(props: SectionProps) {
           ))}
         </tbody>
       </table>
+      <LoadLine destination="standards" what="more exports of standards" />
       {stocks.length > 0 && (
         <table class="ledger narrow">
           <caption>Stocks: an error common to all standards made from one</caption>
@@ -232,7 +236,7 @@ function StandardRow({
           placeholder="1"
           value={shown(standard.pathLengthCm)}
           commit={(text) => {
-            const entry = parsePositive(text);
+            const entry = parsePathLength(text);
             if (!entry.ok) return entry.message;
             set('set path length', { pathLengthCm: entry.value });
             return null;
