@@ -1,3 +1,4 @@
+import { checkShape } from './check-shape.ts';
 import { factorise } from './orthogonal.ts';
 
 export interface NonNegativeSolution {
@@ -12,6 +13,7 @@ export interface NonNegativeSolution {
 /**
  * Minimises |A x - b| with x[k] ≥ 0, except where `free[k]`. Active-set method of Lawson and Hanson
  * (Solving Least Squares Problems, 1974, NNLS); free columns are passive from the start and stay so.
+ * RangeError for columns of unequal length and entries that are not finite.
  *
  * @param columns columns of A, all of one length
  */
@@ -21,6 +23,7 @@ export function nonNegativeLeastSquares(
   free: readonly boolean[] = [],
 ): NonNegativeSolution {
   const size = columns.length;
+  checkShape([...columns, rhs], rhs.length);
   const passive = new Set<number>([...columns.keys()].filter((k) => free[k] === true));
   let x = solveOn(columns, rhs, passive);
   const norms = columns.map(norm);
@@ -33,12 +36,14 @@ export function nonNegativeLeastSquares(
     passive.add(next);
     const trial = solveOn(columns, rhs, passive);
     if (!(trial[next]! > 0)) {
-      // rounding alone called for it (columns that depend on each other): leave it out for good
+      // rounding alone called for it (columns that depend on each other): pass it over from here
       passive.delete(next);
       barred.add(next);
       continue;
     }
     x = feasible(columns, rhs, { x, trial, passive, free });
+    // from another place it may be called for in earnest
+    barred.clear();
   }
   const residual = residualOf(columns, rhs, x);
   return {

@@ -1,4 +1,5 @@
 import { Matrix, SingularValueDecomposition } from 'ml-matrix';
+import { checkShape } from './check-shape.ts';
 import { type HouseholderFactors, householder } from './householder.ts';
 import { powerOfTwoNear, scaledBy } from './power-of-two.ts';
 import { refined } from './refine.ts';
@@ -34,6 +35,7 @@ export function factorise(
 ): OrthogonalFactors {
   const rows = columns[0]?.length ?? 0;
   const size = columns.length;
+  if (size === 0) throw new RangeError('least squares needs at least one column');
   checkShape(columns, rows);
   if (lowParts) checkShape(lowParts, rows);
   const scales = columns.map(powerOfTwoNear);
@@ -63,16 +65,6 @@ export function factorise(
     pseudoInverse: () => scaledRows(inverse, factors, scales),
     nullSpace: () => nullSpace.map((vector) => vector.map((value, k) => value / scales[k]!)),
   };
-}
-
-function checkShape(columns: readonly Float64Array[], rows: number): void {
-  if (columns.length === 0) throw new RangeError('least squares needs at least one column');
-  for (const column of columns) {
-    if (column.length !== rows) {
-      throw new RangeError(`least squares needs columns of ${rows} rows, not ${column.length}`);
-    }
-    if (!column.every(Number.isFinite)) throw new RangeError('least squares needs finite numbers');
-  }
 }
 
 interface Decomposed {
