@@ -5,13 +5,15 @@ import { positiveRoot } from './positive-root.ts';
 
 /** From here on Hill's expansion is exact to doubles (its first term left out is below 1e-20). */
 const manyDf = 1e5;
+/** From here on no double tells Student's t from the normal, and powers of the expansion could overflow. */
+const normalDf = 1e30;
 /** Beyond this t² would overflow; the tail is a power of t there, to all digits. */
 const farOut = 1e100;
 
 /** Student's t: chance of a value above `t`, without cancellation. Real df > 0; Infinity is the normal. */
 export function studentTUpper(t: number, df: number): number {
   if (!(df > 0)) throw new RangeError(`Student's t needs df > 0, not ${df}`);
-  if (df === Number.POSITIVE_INFINITY) return normalCdf(-t);
+  if (df >= normalDf) return normalCdf(-t);
   if (t < 0) return 1 - studentTUpper(-t, df);
   if (df >= manyDf) return normalCdf(-equivalentNormal(t, df));
   const ratio = t / Math.sqrt(df);
@@ -28,7 +30,7 @@ export function studentTCdf(t: number, df: number): number {
 /** Student's t quantile; RangeError unless 0 < p < 1. */
 export function studentTQuantile(p: number, df: number): number {
   if (!(p > 0 && p < 1)) throw new RangeError(`studentTQuantile needs 0 < p < 1, not ${p}`);
-  if (df === Number.POSITIVE_INFINITY) return normalQuantile(p);
+  if (df >= normalDf) return normalQuantile(p);
   // by the smaller tail, which keeps its digits; 1 - p is exact from 1/2 on
   if (p > 0.5) return -studentTQuantile(1 - p, df);
   return p === 0.5 ? 0 : -positiveRoot((t) => studentTUpper(t, df) > p);

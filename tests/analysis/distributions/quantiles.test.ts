@@ -86,6 +86,8 @@ describe('one distribution against another', () => {
 
   it('Student becomes the normal as degrees of freedom grow', () => {
     expect(studentTQuantile(0.975, Number.POSITIVE_INFINITY)).toBe(normalQuantile(0.975));
+    expect(studentTQuantile(0.975, 1e300)).toBe(normalQuantile(0.975));
+    expect(studentTUpper(40, 1e300)).toBe(normalCdf(-40));
     const z = normalQuantile(0.975);
     for (const degrees of [1e6, 1e9, 1e15]) {
       // the expansion in 1/df to its first term; the next is some 1/df²
