@@ -6,11 +6,8 @@ import {
 } from '../sections/aliquots/aliquots-section.tsx';
 import { ComparedSection, comparedSummary } from '../sections/compared/compared-section.tsx';
 import { FitSection, fitSummary } from '../sections/fit/fit-section.tsx';
-import {
-  ReactionSection,
-  reactionNeeds,
-  reactionSummary,
-} from '../sections/reaction/reaction-section.tsx';
+import { reactionNeeds } from '../sections/reaction/reaction-needs.ts';
+import { ReactionSection, reactionSummary } from '../sections/reaction/reaction-section.tsx';
 import type { SectionProps } from '../sections/section.ts';
 import { SplitSection, splitSummary } from '../sections/split/split-section.tsx';
 import {
@@ -72,7 +69,7 @@ function Sections() {
         id="reaction"
         title="Reaction"
         summary={reactionSummary(props)}
-        needs={reactionNeeds(props)}
+        needs={reactionNeeds(props.sheet)}
       >
         <ReactionSection {...props} />
       </SheetSection>
