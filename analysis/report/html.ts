@@ -18,6 +18,13 @@ export function breakable(text: string): string {
   return pieces.join('');
 }
 
+const longestLine = 44;
+
+/** A short text that is to stay on one line of its cell; a long one may break. */
+export function oneLine(text: string): string {
+  return text.length > longestLine ? breakable(text) : `<span class="line">${escaped(text)}</span>`;
+}
+
 /** Text as a string of a style sheet: all but plain letters, digits and spaces by number, so that it cannot end the string or the sheet. */
 export function cssString(text: string): string {
   const signs = Array.from(text, (sign) =>

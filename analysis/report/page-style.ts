@@ -11,14 +11,14 @@ export function pageStyle(sheet: Sheet, title: string): string {
     signs.length > longestTitle ? `${signs.slice(0, longestTitle - 1).join('')}…` : title;
   const mark =
     sheet.invented === true
-      ? `@top-right { content: "Invented data"; font: 700 9px sans-serif; color: #7a4a00; }`
+      ? `@top-right { content: "Invented data"; width: 20%; font: 700 9px sans-serif; color: #7a4a00; }`
       : '';
   const looks = Array.from(
     { length: lookCount },
     (_, index) => `.look-${index} { color: ${speciesLook(index).colour}; }`,
   );
   return `
-@page { size: auto; margin: 20mm 16mm 18mm; @top-left { content: ${cssString(short)}; font: 9px sans-serif; color: #4f5b60; } ${mark} @bottom-right { content: counter(page) " / " counter(pages); font: 9px sans-serif; color: #4f5b60; } }
+@page { size: auto; margin: 20mm 16mm 18mm; @top-left { content: ${cssString(short)}; width: 80%; font: 9px sans-serif; color: #4f5b60; } ${mark} @bottom-right { content: counter(page) " / " counter(pages); font: 9px sans-serif; color: #4f5b60; } }
 @page :first { @top-left { content: ""; } }
 ${looks.join('\n')}
 `;

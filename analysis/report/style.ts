@@ -16,7 +16,7 @@ p { margin: 4px 0; orphans: 3; widows: 3; }
 .interval { font-size: 16px; color: var(--soft); margin: 0 0 6px; }
 .summary { margin-top: 16px; }
 .summary strong { font-size: 18px; line-height: 1.3; }
-td strong, .line { white-space: nowrap; }
+.line { white-space: nowrap; }
 table { border-collapse: collapse; width: 100%; margin: 6px 0 10px; font-size: 12px; }
 thead { display: table-header-group; }
 tr { break-inside: avoid; }
@@ -27,9 +27,9 @@ td em { color: var(--doubt); font-style: normal; }
 .number { text-align: right; white-space: nowrap; }
 thead .number { white-space: normal; }
 .interval-cell { white-space: nowrap; color: var(--soft); }
-.species { display: inline-flex; gap: 5px; align-items: baseline; }
-.glyph { flex: none; width: 22px; height: 16px; }
-.glyph svg { display: block; margin-top: -3px; }
+.species { display: block; position: relative; padding-left: 27px; }
+.glyph { position: absolute; left: 0; top: -2px; }
+.glyph svg { display: block; }
 .keep { break-inside: avoid; }
 .hash { font-family: ui-monospace, "DejaVu Sans Mono", monospace; font-size: 8.5px; }
 .aliquot + .aliquot { border-top: 1px solid var(--rule); margin-top: 20px; }

@@ -1,11 +1,11 @@
 import type { Doubt } from '../../doubts/doubt.ts';
-import { speciesLabel } from '../../sheet/defaults.ts';
 import type { Sheet } from '../../sheet/schema.ts';
 import { type AliquotCurves, leftOut } from '../../split/results.ts';
 import { escaped } from '../html.ts';
 import { labelSpot } from '../label-spot.ts';
 import { lookOf } from '../species-look.ts';
 import { areaOf, axes, type Panel, pathOf, xAt, yAt } from './axes.ts';
+import { figureLabel } from './figure-label.ts';
 import { leftOutSvg } from './left-out.ts';
 import { residualRange, residualSvg } from './residual.ts';
 
@@ -49,7 +49,9 @@ function stack(sheet: Sheet, curves: AliquotCurves, panel: Panel): string {
     .map(({ species, absorbance }) => {
       const top = below.map((value, i) => value + (absorbance[i] ?? Number.NaN));
       const area = areaOf(panel, wavelengthNm, below, top);
-      const edge = pathOf(panel, wavelengthNm, top);
+      // beyond the panel there is no edge to draw, while the area goes up to its top
+      const shown = top.map((value) => (value > panel.y[1] ? Number.NaN : value));
+      const edge = pathOf(panel, wavelengthNm, shown);
       const { colour, dash } = lookOf(sheet, species);
       below = top;
       const pattern = dash === '' ? '' : ` stroke-dasharray="${dash}"`;
@@ -95,7 +97,7 @@ function labels(sheet: Sheet, curves: AliquotCurves, panel: Panel): string {
       const line = isThin
         ? `<line x1="${x.toFixed(1)}" y1="${y.toFixed(1)}" x2="${tx.toFixed(1)}" y2="${(ty + 3).toFixed(1)}" stroke="${colour}"/>`
         : '';
-      return `${line}<text class="label" x="${tx.toFixed(1)}" y="${ty.toFixed(1)}" fill="${colour}" text-anchor="middle" dy="0.3em">${escaped(speciesLabel(sheet, species))}</text>`;
+      return `${line}<text class="label" x="${tx.toFixed(1)}" y="${ty.toFixed(1)}" fill="${colour}" text-anchor="middle" dy="0.3em">${figureLabel(sheet, species).text}</text>`;
     })
     .join('');
 }

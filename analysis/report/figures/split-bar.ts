@@ -1,9 +1,8 @@
-import { speciesLabel } from '../../sheet/defaults.ts';
 import type { Sheet } from '../../sheet/schema.ts';
 import type { SplitFraction } from '../../split/results.ts';
-import { escaped } from '../html.ts';
 import { quantifiedText } from '../numbers.ts';
 import { lookOf } from '../species-look.ts';
+import { figureLabel } from './figure-label.ts';
 import { hatchedPath } from './hatched.ts';
 
 const width = 680;
@@ -28,7 +27,7 @@ export function splitBarSvg(sheet: Sheet, split: readonly SplitFraction[]): stri
   const names = split.map(({ species, fraction }) => {
     const { value } = quantifiedText(fraction, { unit: 'percent' });
     const { colour } = lookOf(sheet, species);
-    return `<tspan fill="${colour}">${escaped(speciesLabel(sheet, species))} ${value} %</tspan>`;
+    return `<tspan fill="${colour}">${figureLabel(sheet, species).text} ${value} %</tspan>`;
   });
   return `<svg class="figure split-bar" viewBox="0 0 ${width} 24" role="img" aria-label="Split of the products">${parts.join('')}<text class="label" x="0" y="21">${names.join('<tspan fill="#4f5b60"> : </tspan>')}</text></svg>`;
 }

@@ -1,9 +1,8 @@
-import { speciesLabel } from '../../sheet/defaults.ts';
 import type { Sheet } from '../../sheet/schema.ts';
 import type { StandardCurves } from '../../split/results.ts';
-import { escaped } from '../html.ts';
 import { lookOf } from '../species-look.ts';
 import { axes, type Panel, pathOf, xAt, yAt } from './axes.ts';
+import { figureLabel } from './figure-label.ts';
 
 /** Molar absorptivity of every species, named at its highest point away from the edges, as SVG text. */
 export function standardsFigureSvg(sheet: Sheet, standards: readonly StandardCurves[]): string {
@@ -14,17 +13,18 @@ export function standardsFigureSvg(sheet: Sheet, standards: readonly StandardCur
     const { colour, dash } = lookOf(sheet, species);
     const pattern = dash === '' ? '' : ` stroke-dasharray="${dash}"`;
     const peak = peakOf(wavelengthNm, molarAbsorptivity);
-    const text = speciesLabel(sheet, species);
+    const { text, halfWidth } = figureLabel(sheet, species);
     const label = freeSpot(
       {
         x: xAt(panel, wavelengthNm[peak] ?? panel.x[0]),
         y: yAt(panel, Math.min(molarAbsorptivity[peak] ?? 0, panel.y[1])) - 6,
-        halfWidth: 3.2 * text.length,
+        halfWidth,
       },
       placed,
+      panel,
     );
     placed.push(label);
-    return `<path d="${pathOf(panel, wavelengthNm, molarAbsorptivity)}" fill="none" stroke="${colour}" stroke-width="1.5"${pattern}/><text class="label" x="${label.x.toFixed(1)}" y="${label.y.toFixed(1)}" fill="${colour}" text-anchor="middle">${escaped(text)}</text>`;
+    return `<path d="${pathOf(panel, wavelengthNm, molarAbsorptivity)}" fill="none" stroke="${colour}" stroke-width="1.5"${pattern}/><text class="label" x="${label.x.toFixed(1)}" y="${label.y.toFixed(1)}" fill="${colour}" text-anchor="middle">${text}</text>`;
   });
   return `<svg class="figure" viewBox="0 0 680 262" role="img" aria-label="Molar absorptivity of the standards">${axes(panel, 'wavelength, nm', 'ε, L mol⁻¹ cm⁻¹')}${curves.join('')}</svg>`;
 }
@@ -57,19 +57,25 @@ interface Label {
   readonly halfWidth: number;
 }
 
-/** Moves a label up until it lies on none of the others. */
-function freeSpot(wanted: Label, placed: readonly Label[]): Label {
-  const lineHeight = 12;
-  const isTaken = (y: number): boolean =>
-    placed.some(
+const lineHeight = 12;
+
+/** The nearest place above or under the wanted one where a label lies on none of the others. */
+function freeSpot(wanted: Label, placed: readonly Label[], panel: Panel): Label {
+  const isFree = (y: number): boolean =>
+    y >= lineHeight &&
+    y <= panel.top + panel.height &&
+    !placed.some(
       (other) =>
         Math.abs(other.x - wanted.x) < other.halfWidth + wanted.halfWidth &&
         Math.abs(other.y - y) < lineHeight,
     );
-  let { y } = wanted;
-  // each step leaves at least one label behind, so there are no more steps than labels
-  for (let step = 0; step < placed.length && isTaken(y); step++) y -= lineHeight;
-  return y < lineHeight ? wanted : { ...wanted, y };
+  // each label can take two steps on either side
+  for (let step = 0; step <= 4 * placed.length; step++) {
+    const away = Math.ceil(step / 2) * lineHeight;
+    const y = wanted.y + (step % 2 === 1 ? -away : away);
+    if (isFree(y)) return { ...wanted, y };
+  }
+  return wanted;
 }
 
 function peakOf(wavelengthNm: Float64Array, values: Float64Array): number {

@@ -1,4 +1,4 @@
-import { speciesName } from '../../sheet/defaults.ts';
+import { speciesLabel, speciesName } from '../../sheet/defaults.ts';
 import type { Sheet, SheetSpectrum } from '../../sheet/schema.ts';
 import type { StandardCurves } from '../../split/results.ts';
 import { standardsFigureSvg } from '../figures/standards-figure.ts';
@@ -93,7 +93,7 @@ export function aliquotsHtml(sheet: Sheet): string {
       Object.entries(chargedMol)
         .map(
           ([species, mol]) =>
-            `${escaped(speciesName(sheet, species))} ${figuresText(1000 * mol, 4)} mmol`,
+            `${breakable(speciesLabel(sheet, species))} ${figuresText(1000 * mol, 4)} mmol`,
         )
         .join('; '),
       volumeL === undefined ? '' : figuresText(1000 * volumeL, 4),

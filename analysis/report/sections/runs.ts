@@ -1,7 +1,7 @@
 import { speciesLabel } from '../../sheet/defaults.ts';
 import type { Sheet } from '../../sheet/schema.ts';
 import type { ComparisonResult, Quantified, RunResult } from '../../split/results.ts';
-import { breakable, escaped, htmlTable } from '../html.ts';
+import { breakable, htmlTable, oneLine } from '../html.ts';
 import { quantifiedText } from '../numbers.ts';
 import { answerText } from './answer.ts';
 
@@ -22,7 +22,7 @@ export function runsHtml(sheet: Sheet, runs: readonly RunResult[]): string {
       breakable(runName(sheet, run.run)),
       String(run.aliquots),
       answer
-        ? `<strong>${escaped(answer.head)}</strong><br><span class="soft">${escaped(answer.interval)}</span>`
+        ? `<strong>${oneLine(answer.head)}</strong><br><span class="soft">${breakable(answer.interval)}</span>`
         : '',
       foundText(coresFound),
       foundText(armsFound),
@@ -48,7 +48,7 @@ export function comparisonsHtml(sheet: Sheet, comparisons: readonly ComparisonRe
     const { value, interval } = quantifiedText(ratioOfRatios, { unit: 'plain' });
     return [
       breakable(`${runName(sheet, runs[0])} over ${runName(sheet, runs[1])}`),
-      `<span class="line">${escaped(`${speciesLabel(sheet, of)} : ${speciesLabel(sheet, to)}`)}</span>`,
+      oneLine(`${speciesLabel(sheet, of)} : ${speciesLabel(sheet, to)}`),
       value,
       interval,
       pValueText(pValue),

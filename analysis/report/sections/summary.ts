@@ -1,6 +1,6 @@
 import type { Sheet } from '../../sheet/schema.ts';
 import type { AliquotResult, Results } from '../../split/results.ts';
-import { breakable, escaped, htmlTable } from '../html.ts';
+import { breakable, htmlTable, oneLine } from '../html.ts';
 import { answerText } from './answer.ts';
 import { runName } from './runs.ts';
 
@@ -37,7 +37,7 @@ function row(
   return [
     breakable(of),
     answer
-      ? `<strong>${escaped(answer.head)}</strong><br><span class="soft">${escaped(answer.interval)}</span>`
+      ? `<strong>${oneLine(answer.head)}</strong><br><span class="soft">${breakable(answer.interval)}</span>`
       : '—',
     breakable(doubts),
   ];

@@ -55,7 +55,7 @@ describe('the report as HTML', () => {
   it('closes every tag that it opens', () => {
     const { html } = reported();
     const open: string[] = [];
-    const empty = new Set(['meta', 'br', 'line', 'path', 'circle', 'rect']);
+    const empty = new Set(['meta', 'br', 'line', 'path', 'circle', 'rect', 'wbr']);
     for (const [, slash, name = '', rest = ''] of html.matchAll(
       /<(\/?)([a-z][a-z0-9]*)([^>]*)>/g,
     )) {
