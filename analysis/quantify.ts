@@ -18,8 +18,9 @@ import type { AliquotCurves, AliquotResult, Quantification } from './split/resul
 import { runResult } from './split/runs.ts';
 import { type StandardsLibrary, standardsLibrary } from './standards/library.ts';
 import type { SpeciesStandard } from './standards/species-standard.ts';
+import { pointUse } from './unmixing/choose-points.ts';
 import { commonEffects, errorSources } from './unmixing/error-sources.ts';
-import { unmix } from './unmixing/unmix.ts';
+import { type Unmixing, unmix } from './unmixing/unmix.ts';
 
 /**
  * The whole sheet, computed. `readings` holds one reading for each file that the sheet points at
@@ -118,11 +119,24 @@ export function quantifyAliquot(
       budget: budgetOf(unmixing, sources, products),
       fit: fitResult(unmixing, crude.wavelengthNm),
       doubts,
-      notes: [...library.notes, ...(dilution.note ? [dilution.note] : [])],
+      notes: [
+        ...windowNotes(unmixing, settings, crude.wavelengthNm),
+        ...(dilution.note ? [dilution.note] : []),
+      ],
     },
     curves: aliquotCurves(aliquot.id, crude, unmixing, settings),
     estimate: { aliquot: aliquot.id, run, estimate, effects: commonEffects(sources), dilution },
   };
+}
+
+/** What of the window could not be fitted because a standard or the crude does not reach there. */
+function windowNotes({ use, at }: Unmixing, { windowNm }: FitSettings, nm: Float64Array): string[] {
+  const uncovered = use.filter((reason) => reason === pointUse.noStandard).length;
+  if (windowNm === null || uncovered === 0) return [];
+  const [low, high] = [nm[at[0] ?? 0], nm[at.at(-1) ?? 0]];
+  return [
+    `${uncovered} points of the window lie where not every standard reaches; fitted from ${low} to ${high} nm.`,
+  ];
 }
 
 /** Positions of the products among the species that are fitted. */

@@ -22,7 +22,8 @@ const medianToSd = 1.482602218505602;
  */
 export const unexplainedBand: DoubtTest = (evidence) => {
   const best = strongestBand(evidence);
-  if (!best || !(Math.abs(best.z) > limit)) return [];
+  if (!best || !(Math.abs(best.z) > limit) || Math.abs(best.height) < heightOfNote(evidence))
+    return [];
   const [low, high] = [best.nm - 2 * best.widthNm, best.nm + 2 * best.widthNm];
   const over = best.height > 0;
   return [
@@ -45,6 +46,12 @@ export interface Band {
   readonly height: number;
   readonly lowest: number;
   readonly highest: number;
+}
+
+/** What interpolation and rounding can leave behind moves no answer: a thousandth of the signal, four times the noise, or 0.1 mAU. */
+function heightOfNote({ unmixing: { fit, noise } }: Evidence): number {
+  const least = Math.max(1e-4, 4 * noise.constant);
+  return fit.fitted.reduce((most, value) => Math.max(most, 1e-3 * value), least);
 }
 
 /** The band that stands out most from the residual; null where there are too few points to look. */

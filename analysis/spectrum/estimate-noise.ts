@@ -1,5 +1,5 @@
 import { xMedian } from 'ml-spectra-processing';
-import type { NoiseModel } from './noise.ts';
+import { type NoiseModel, noiseFloor } from './noise.ts';
 
 /** Neighbours on each side from which a point is predicted; more see through sharper bands. */
 const reaches = [1, 2, 3, 4] as const;
@@ -20,20 +20,23 @@ const medianToSd = 1.482602218505602;
  *
  * @param values absorbance, or the residual of a fit; NaN where missing; same length as `wavelengthNm`
  * @param level absorbance at which each point was read; the values themselves unless given
+ * @param rounding standard deviation of rounding to the printed digits, below which no noise is believed
  */
 export function estimateNoise(
   wavelengthNm: Float64Array,
   values: Float64Array,
   level: Float64Array = values,
+  rounding: number = roundingSd(values),
 ): NoiseModel | null {
+  const floor = Math.max(noiseFloor, rounding);
   let settled: Prediction | null = null;
   for (const reach of reaches) {
-    const next = predictionErrors({ wavelengthNm, values, level }, reach);
+    const next = predictionErrors({ wavelengthNm, values, level }, reach, floor);
     if (next.errors.length < smallestSample) break;
     if (settled && next.scale > 0.9 * settled.scale) break;
     settled = next;
   }
-  return settled && twoParts(settled);
+  return settled && twoParts(settled, floor);
 }
 
 interface Prediction {
@@ -50,7 +53,26 @@ interface Readings {
   readonly level: Float64Array;
 }
 
-function predictionErrors({ wavelengthNm, values, level }: Readings, reach: number): Prediction {
+/**
+ * Standard deviation of rounding to the printed digits: the smallest step between two values over
+ * √12. Where an instrument prints three decimals, a flat stretch shows no other noise.
+ */
+export function roundingSd(values: Float64Array): number {
+  const sorted = values.filter((value) => !Number.isNaN(value)).sort();
+  let step = Number.POSITIVE_INFINITY;
+  for (let i = 1; i < sorted.length; i++) {
+    const gap = sorted[i]! - sorted[i - 1]!;
+    // differences of decimals in doubles: what is this small is rounding of the same number
+    if (gap > 1e-9 && gap < step) step = gap;
+  }
+  return Number.isFinite(step) ? step / Math.sqrt(12) : 0;
+}
+
+function predictionErrors(
+  { wavelengthNm, values, level }: Readings,
+  reach: number,
+  floor: number,
+): Prediction {
   const errors: number[] = [];
   const at: number[] = [];
   for (let i = reach; i < wavelengthNm.length - reach; i++) {
@@ -63,7 +85,7 @@ function predictionErrors({ wavelengthNm, values, level }: Readings, reach: numb
   return {
     errors: Float64Array.from(errors),
     at: Float64Array.from(at),
-    scale: sizes.length > 0 ? medianToSd * xMedian(sizes) : 0,
+    scale: sizes.length > 0 ? Math.max(medianToSd * xMedian(sizes), floor) : floor,
   };
 }
 
@@ -83,7 +105,7 @@ function predictionError(x: Float64Array, y: Float64Array, i: number, reach: num
 }
 
 /** σ² = constant² + transmittance²·10^2A through the bins, both parts non-negative. */
-function twoParts({ errors, at, scale }: Prediction): NoiseModel {
+function twoParts({ errors, at }: Prediction, floor: number): NoiseModel {
   const order = Array.from(at.keys()).sort((a, b) => at[a]! - at[b]!);
   const bins = Math.min(mostBins, Math.floor(order.length / smallestSample));
   let s11 = 0;
@@ -98,9 +120,9 @@ function twoParts({ errors, at, scale }: Prediction): NoiseModel {
     );
     const sd = medianToSd * xMedian(Float64Array.from(members, (i) => Math.abs(errors[i]!)));
     const rise = xMedian(Float64Array.from(members, (i) => 100 ** at[i]!));
-    const variance = sd * sd;
+    const variance = Math.max(sd, floor) ** 2;
     // a variance is known in proportion to itself
-    const weight = members.length / Math.max(variance, 1e-4 * scale * scale, 1e-300) ** 2;
+    const weight = members.length / variance ** 2;
     s11 += weight;
     s12 += weight * rise;
     s22 += weight * rise * rise;

@@ -11,8 +11,6 @@ export interface StandardsLibrary {
   readonly standards: readonly SpeciesStandard[];
   /** Uncertainties that the sheet leaves out, in words. */
   readonly notGiven: readonly string[];
-  /** What was left open and how it was taken, in words. */
-  readonly notes: readonly string[];
 }
 
 /** Reads and combines all standards. Throws a `Refusal` where one is missing or cannot be used. */
@@ -49,7 +47,6 @@ export function standardsLibrary(
       ),
     ),
     notGiven: notGiven(sheet),
-    notes: [],
   };
 }
 

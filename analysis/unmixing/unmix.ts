@@ -1,7 +1,7 @@
 import { chiSquareQuantile } from '../distributions/chi-square.ts';
 import { Refusal } from '../refusal.ts';
 import type { FitSettings } from '../sheet/defaults.ts';
-import { estimateNoise } from '../spectrum/estimate-noise.ts';
+import { estimateNoise, roundingSd } from '../spectrum/estimate-noise.ts';
 import type { NoiseModel } from '../spectrum/noise.ts';
 import type { Spectrum } from '../spectrum/spectrum.ts';
 import { type MolarAbsorptivity, molarAbsorptivityAt } from '../standards/molar-absorptivity.ts';
@@ -215,7 +215,7 @@ function noiseOf(
 ): { noise: NoiseModel; noiseFrom: 'sheet' | 'spectrum'; known: boolean } {
   if (settings.noise) return { noise: settings.noise, noiseFrom: 'sheet', known: true };
   const nm = Float64Array.from(at, (i) => crude.wavelengthNm[i]!);
-  const estimate = estimateNoise(nm, fit.residual, fit.fitted);
+  const estimate = estimateNoise(nm, fit.residual, fit.fitted, roundingSd(crude.values));
   if (estimate) return { noise: estimate, noiseFrom: 'spectrum', known: true };
   if (fit.df < fewestForNoise) {
     throw new Refusal({

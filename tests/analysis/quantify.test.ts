@@ -12,6 +12,8 @@ import {
 import { makeSample } from '../../sample-data/scenario.ts';
 import { syntheticSheet, usual } from './synthetic.ts';
 
+type SheetSpectrumLike = NonNullable<Sheet['aliquots']>[number]['spectrum'];
+
 const noFiles = new Map();
 
 function first(sheet: Sheet): AliquotResult {
@@ -164,6 +166,51 @@ describe('laws', () => {
       12,
     );
   });
+});
+
+describe('spectra as instruments print them', () => {
+  /** The synthetic sheet without noise, every absorbance rounded to some decimals. */
+  function rounded(decimals: number, standardsStepNm: number): Sheet {
+    const quiet = { constant: 0, transmittance: 0 };
+    const [crude, standards] = [
+      syntheticSheet({ noise: quiet }),
+      syntheticSheet({ noise: quiet, stepNm: standardsStepNm }),
+    ];
+    const printed = <T extends { readonly spectrum: SheetSpectrumLike }>(entry: T): T => ({
+      ...entry,
+      spectrum: {
+        embedded: {
+          ...entry.spectrum.embedded,
+          absorbance: entry.spectrum.embedded?.absorbance?.map((value) =>
+            Number(value?.toFixed(decimals)),
+          ),
+        },
+      },
+    });
+    return {
+      ...crude,
+      standards: (standards.standards ?? []).map(printed),
+      aliquots: (crude.aliquots ?? []).map(printed),
+    };
+  }
+
+  it.each([
+    [3, 1],
+    [3, 2],
+    [4, 1],
+    [4, 2],
+    [5, 1],
+    [6, 2],
+  ])(
+    '%i decimals, standards every %i nm: the truth, and no doubt that is none',
+    (decimals, step) => {
+      const result = first(rounded(decimals, step));
+      expect(holds(result.split[0]!.fraction, 2e-5 / 3.2e-5)).toBe(true);
+      // a step of the last decimal over √12, spread over some 200 points
+      expect(Math.abs(result.split[0]!.fraction.value! - 0.625)).toBeLessThan(10 ** -decimals);
+      expect(codesOf(result)).toEqual([]);
+    },
+  );
 });
 
 describe('runs compared', () => {
