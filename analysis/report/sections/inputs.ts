@@ -65,7 +65,7 @@ export function standardsHtml(sheet: Sheet, standards: readonly StandardCurves[]
     standardsFigureSvg(sheet, standards),
     scales.length === 0
       ? ''
-      : `<p class="soft">Relative standard uncertainty of the scale of ε: ${scales.join('; ')}.</p>`,
+      : `<p class="soft">Relative standard uncertainty of the scale of ε: ${scales.join('; ')}. “Moved by” is how far a solution was brought to meet the others of its species.</p>`,
   ].join('');
 }
 
