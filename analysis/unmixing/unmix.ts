@@ -275,9 +275,16 @@ function refuseTooFew(
   const baseline = { none: 0, offset: 1, line: 2, scatter: 2 }[settings.baseline];
   const unknowns = standards.length + baseline + (settings.shift === 'common' ? 1 : 0);
   if (at.length >= unknowns) return;
-  const reasons = use.filter((reason) => reason === pointUse.noStandard).length;
   const [low, high] = [crude.wavelengthNm[0], crude.wavelengthNm.at(-1)];
-  if (reasons > 0 && at.length === 0) {
+  if (settings.windowNm && use.every((reason) => reason === pointUse.outsideWindow)) {
+    throw new Refusal({
+      code: 'window-empty',
+      message: `The window from ${settings.windowNm[0]} to ${settings.windowNm[1]} nm holds no point of the crude, which runs from ${low} to ${high} nm.`,
+      where: { what },
+      mend: 'Move the window to where the crude was recorded.',
+    });
+  }
+  if (at.length === 0 && use.includes(pointUse.noStandard)) {
     throw new Refusal({
       code: 'ranges-do-not-meet',
       message: `The crude runs from ${low} to ${high} nm, and the standards do not all cover any of the window there.`,
@@ -287,7 +294,7 @@ function refuseTooFew(
   }
   throw new Refusal({
     code: 'too-few-points',
-    message: `Only ${at.length} points are left to find ${unknowns} unknowns.`,
+    message: `${at.length === 0 ? 'No point is' : `Only ${at.length} points are`} left to find ${unknowns} unknowns.`,
     where: { what },
     mend: 'Widen the window, exclude less, dilute more so that fewer points are over range, or use a simpler baseline.',
   });

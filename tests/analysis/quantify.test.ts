@@ -422,6 +422,13 @@ describe('what cannot be computed', () => {
     expect(results.refused[0]).toMatchObject({ what: 'aliquot far', code: 'ranges-do-not-meet' });
   });
 
+  it('says that a window holds nothing of the crude', () => {
+    const sheet = syntheticSheet();
+    const { results } = quantify({ ...sheet, fit: { windowNm: [600, 700] } }, noFiles);
+    expect(results.refused[0]).toMatchObject({ code: 'window-empty' });
+    expect(results.refused[0]?.why).toContain('600 to 700 nm');
+  });
+
   it('refuses as many unknowns as points without a given noise, and takes it with one', () => {
     const sheet = syntheticSheet();
     const few: Sheet = { ...sheet, fit: { ...sheet.fit, windowNm: [300, 303] } };
