@@ -1,8 +1,13 @@
-import type { Data, Layout } from 'plotly.js-dist-min';
+import type { Layout, PlotlyHTMLElement, Shape } from 'plotly.js-dist-min';
 import type { ComponentChildren } from 'preact';
-import { useEffect, useRef, useState } from 'preact/hooks';
+import { useEffect, useMemo, useRef, useState } from 'preact/hooks';
 import { tellFault } from '../state/notices.ts';
+import { latestOnly } from '../worker/latest.ts';
+import type { Figure } from './figure.ts';
+import './plot-frame.css';
 import { clear, draw, imageOf } from './plotly.ts';
+import { plotTheme } from './theme.ts';
+import type { RangeNm } from './zoom-range.ts';
 
 interface PlotFrameProps {
   /** What a screen reader says of it. */
@@ -10,49 +15,54 @@ interface PlotFrameProps {
   /** For the file of an exported picture. */
   readonly name: string;
   readonly height: number;
-  readonly data: Data[];
-  readonly layout: Partial<Layout>;
+  /** Draws itself anew only where this function is a new one. */
+  readonly figure: (widthPx: number) => Figure;
   /** The same numbers as a table. */
   readonly table: () => ComponentChildren;
   /** Lies over the plot; told the plot's width in px. */
   readonly overlay?: (width: number) => ComponentChildren;
-  /** The range of the abscissa that was zoomed to; null for all. */
-  readonly onZoom?: (range: readonly [number, number] | null) => void;
-  readonly controls?: ComponentChildren;
+  /** What the overlay stands for, in an exported picture. */
+  readonly pictureShapes?: readonly Partial<Shape>[];
+  /** The range of the abscissa that was zoomed to with the pointer; null for all. */
+  readonly onZoom: (range: RangeNm | null) => void;
+  readonly controls: ComponentChildren;
+}
+
+interface Drawing {
+  readonly figure: Figure;
+  readonly size: Pick<Layout, 'width' | 'height'>;
 }
 
 /** A plot with its few controls: as a table, as SVG or PNG, and whatever its owner adds. */
 export function PlotFrame(props: PlotFrameProps) {
-  const { label, name, height, data, layout, table, overlay, onZoom, controls } = props;
+  const { label, name, height, figure, table, overlay, pictureShapes = [], controls } = props;
   const place = useRef<HTMLDivElement>(null);
-  const zoom = useRef(onZoom);
-  zoom.current = onZoom;
+  const onZoom = useRef(props.onZoom);
+  onZoom.current = props.onZoom;
   const width = useWidth(place);
   const [isTable, setIsTable] = useState(false);
+  const drawn = useMemo(() => (width > 0 ? figure(width) : null), [figure, width]);
+  const show = useMemo(() => pacedDraw(place, (range) => onZoom.current(range)), []);
   useEffect(() => {
-    const element = place.current;
-    if (!element || width === 0) return;
-    draw(element, data, { ...layout, width, height }).then((plot) => {
-      if (element.dataset.listens) return;
-      element.dataset.listens = 'yes';
-      plot.on('plotly_relayout', (event) => {
-        const low = event['xaxis.range[0]'];
-        const high = event['xaxis.range[1]'];
-        if (typeof low === 'number' && typeof high === 'number') zoom.current?.([low, high]);
-      });
-      plot.on('plotly_doubleclick', () => zoom.current?.(null));
-    }, tellFault);
-  }, [data, layout, width, height]);
+    if (drawn) show({ figure: drawn, size: { width, height } });
+  }, [drawn, width, height, show]);
   useEffect(() => {
     const element = place.current;
     return () => {
       if (element) void clear(element);
     };
   }, []);
-  const save = (format: 'svg' | 'png') => async () => {
-    if (!place.current) return;
+  const save = async (format: 'svg' | 'png'): Promise<void> => {
+    if (!drawn) return;
+    const { data, layout } = drawn;
+    const picture = {
+      ...layout,
+      // a picture goes onto paper of any colour
+      paper_bgcolor: plotTheme.value.paper,
+      shapes: [...(layout.shapes ?? []), ...pictureShapes],
+    };
     const link = document.createElement('a');
-    link.href = await imageOf(place.current, format);
+    link.href = await imageOf(data, picture, { format, width, height });
     link.download = `${name}.${format}`;
     link.click();
   };
@@ -65,10 +75,10 @@ export function PlotFrame(props: PlotFrameProps) {
       </div>
       <div class="plot-controls">
         {controls}
-        <button type="button" class="quiet" onClick={() => void save('svg')().catch(tellFault)}>
+        <button type="button" class="quiet" onClick={() => void save('svg').catch(tellFault)}>
           Picture as SVG
         </button>
-        <button type="button" class="quiet" onClick={() => void save('png')().catch(tellFault)}>
+        <button type="button" class="quiet" onClick={() => void save('png').catch(tellFault)}>
           as PNG
         </button>
         <button
@@ -83,6 +93,45 @@ export function PlotFrame(props: PlotFrameProps) {
       {isTable && <div class="plot-table">{table()}</div>}
     </figure>
   );
+}
+
+const longestRestMs = 150;
+
+/**
+ * Draws the newest figure and then rests as long as that took, so that a drag, which asks for far
+ * more drawings than can be made, leaves time for the pointer.
+ */
+function pacedDraw(
+  place: { readonly current: HTMLDivElement | null },
+  onZoom: (range: RangeNm | null) => void,
+): (drawing: Drawing) => void {
+  return latestOnly(
+    async ({ figure, size }: Drawing) => {
+      const element = place.current;
+      if (!element?.isConnected) return;
+      const begun = performance.now();
+      listen(element, await draw(element, figure.data, { ...figure.layout, ...size }), onZoom);
+      const rest = Math.min(performance.now() - begun, longestRestMs);
+      await new Promise((resolve) => setTimeout(resolve, rest));
+    },
+    () => undefined,
+    tellFault,
+  );
+}
+
+function listen(
+  element: HTMLElement,
+  plot: PlotlyHTMLElement,
+  onZoom: (range: RangeNm | null) => void,
+): void {
+  if (element.dataset.listens) return;
+  element.dataset.listens = 'yes';
+  plot.on('plotly_relayout', (event) => {
+    const low = event['xaxis.range[0]'];
+    const high = event['xaxis.range[1]'];
+    if (typeof low === 'number' && typeof high === 'number') onZoom([low, high]);
+  });
+  plot.on('plotly_doubleclick', () => onZoom(null));
 }
 
 function useWidth(place: { readonly current: HTMLDivElement | null }): number {

@@ -36,8 +36,16 @@ export async function clear(element: HTMLElement): Promise<void> {
   if (loading) (await loading).purge(element);
 }
 
-/** The plot as a file of its own. */
-export async function imageOf(element: HTMLElement, format: 'svg' | 'png'): Promise<string> {
-  const size = { width: element.clientWidth, height: element.clientHeight };
-  return (await plotly()).toImage(element, { format, ...size, scale: format === 'png' ? 2 : 1 });
+/** A plot of so many px as the address of a picture. */
+export async function imageOf(
+  data: Data[],
+  layout: Partial<Layout>,
+  picture: { readonly format: 'svg' | 'png'; readonly width: number; readonly height: number },
+): Promise<string> {
+  const { width, height, format } = picture;
+  return (await plotly()).toImage(
+    { data, layout: { ...layout, width, height }, config: plotConfig },
+    // without a size here it would take one of its own, whatever the layout says
+    { ...picture, scale: format === 'png' ? 2 : 1 },
+  );
 }

@@ -1,101 +1,123 @@
 import { useRef, useState } from 'preact/hooks';
+import { edgeLimits, keyTarget, movedEdge, type Side } from './window-edge.ts';
+import type { RangeNm } from './zoom-range.ts';
 
 interface WindowHandlesProps {
-  readonly windowNm: readonly [number, number];
+  readonly windowNm: RangeNm;
   /** What may be chosen. */
-  readonly limitsNm: readonly [number, number];
+  readonly limitsNm: RangeNm;
   /** What the plot shows. */
-  readonly rangeNm: readonly [number, number];
+  readonly rangeNm: RangeNm;
   /** Room at the left and right of the panel and its width, px. */
   readonly left: number;
   readonly width: number;
   readonly top: number;
   readonly height: number;
-  readonly onMove: (windowNm: readonly [number, number], gesture: string) => void;
+  readonly onMove: (windowNm: RangeNm, gesture: string) => void;
+}
+
+interface Drag {
+  readonly side: Side;
+  readonly nm: number;
 }
 
 let gestures = 0;
+/** Nearer than this the numbers of the two edges do not fit between them. */
+const roomForLabelsPx = 76;
 
 /** The two edges of the fit window, over the plot: dragged, or moved by the arrow keys. */
 export function WindowHandles(props: WindowHandlesProps) {
+  const [drag, setDrag] = useState<Drag | null>(null);
+  const shown = drag ? movedEdge(props.windowNm, drag.side, drag.nm) : props.windowNm;
+  const { left, width, top, height, rangeNm, limitsNm } = props;
+  const at = (nm: number): number => ((nm - rangeNm[0]) / (rangeNm[1] - rangeNm[0])) * width;
+  const within = (px: number): number => Math.min(Math.max(px, 0), width);
+  // an edge beyond the spectrum is shown at the spectrum's end, where it can be taken hold of
+  const held = (nm: number): number => Math.min(Math.max(nm, limitsNm[0]), limitsNm[1]);
+  const [from, to] = [within(at(shown[0])), within(at(shown[1]))];
+  const panel = { top: `${top}px`, height: `${height}px` };
   return (
     <>
-      <Edge {...props} side={0} />
-      <Edge {...props} side={1} />
+      <div class="window-outside" style={{ ...panel, left: `${left}px`, width: `${from}px` }} />
+      <div
+        class="window-outside"
+        style={{ ...panel, left: `${left + to}px`, width: `${width - to}px` }}
+      />
+      {([0, 1] as const).map((side) => (
+        <Edge
+          {...props}
+          key={side}
+          side={side}
+          nm={shown[side]}
+          at={at(held(shown[side]))}
+          setDrag={setDrag}
+          isDragged={drag?.side === side}
+          labelsTo={to - from < roomForLabelsPx ? 'outside' : 'inside'}
+        />
+      ))}
     </>
   );
 }
 
-function Edge({
-  windowNm,
-  limitsNm,
-  rangeNm,
-  left,
-  width,
-  top,
-  height,
-  onMove,
-  side,
-}: WindowHandlesProps & { readonly side: 0 | 1 }) {
-  const [dragged, setDragged] = useState<number | null>(null);
+interface EdgeProps extends WindowHandlesProps {
+  readonly side: Side;
+  readonly nm: number;
+  /** From the panel's left, px. */
+  readonly at: number;
+  readonly isDragged: boolean;
+  readonly labelsTo: 'inside' | 'outside';
+  readonly setDrag: (drag: Drag | null) => void;
+}
+
+function Edge(props: EdgeProps) {
+  const { windowNm, limitsNm, rangeNm, left, width, top, height, side, nm, at } = props;
   const gesture = useRef('');
   const frame = useRef(0);
-  const nm = dragged ?? windowNm[side];
-  const [low, high] = rangeNm;
-  const at = left + ((nm - low) / (high - low)) * width;
-  if (at < left - 1 || at > left + width + 1) return null;
-  const allowed = (wanted: number): number => {
-    const [least, most] =
-      side === 0 ? [limitsNm[0], windowNm[1] - 1] : [windowNm[0] + 1, limitsNm[1]];
-    return Math.min(Math.max(Math.round(wanted), least), most);
-  };
-  const move = (wanted: number): void => {
-    const next = allowed(wanted);
-    onMove(side === 0 ? [next, windowNm[1]] : [windowNm[0], next], gesture.current);
-  };
   const begin = (): void => {
     gestures++;
     gesture.current = `window-${gestures}`;
   };
-  const keys: Record<string, number> = { ArrowLeft: -1, ArrowRight: 1, ArrowDown: -1, ArrowUp: 1 };
+  const [least, most] = edgeLimits(windowNm, limitsNm, side);
+  const allowed = (wanted: number): number => Math.min(Math.max(Math.round(wanted), least), most);
+  const move = (next: number): void =>
+    props.onMove(movedEdge(windowNm, side, next), gesture.current);
+  const end = (): void => props.setDrag(null);
+  if (at < -1 || at > width + 1) return null;
   return (
     <div
       class={`window-edge window-edge-${side === 0 ? 'low' : 'high'}`}
+      data-labels={props.labelsTo}
       role="slider"
       tabIndex={0}
       aria-label={side === 0 ? 'Lower end of the fit window' : 'Upper end of the fit window'}
-      aria-valuemin={limitsNm[0]}
-      aria-valuemax={limitsNm[1]}
+      aria-valuemin={Math.min(least, nm)}
+      aria-valuemax={Math.max(most, nm)}
       aria-valuenow={nm}
       aria-valuetext={`${nm} nm`}
-      style={{ left: `${at}px`, top: `${top}px`, height: `${height}px` }}
+      style={{ left: `${left + at}px`, top: `${top}px`, height: `${height}px` }}
       onPointerDown={(event) => {
         event.currentTarget.setPointerCapture(event.pointerId);
         begin();
-        setDragged(windowNm[side]);
+        props.setDrag({ side, nm });
       }}
       onPointerMove={(event) => {
-        if (dragged === null) return;
         const box = event.currentTarget.parentElement?.getBoundingClientRect();
-        if (!box) return;
-        const wanted = low + ((event.clientX - box.left - left) / width) * (high - low);
-        setDragged(allowed(wanted));
+        if (!props.isDragged || !box) return;
+        const part = (event.clientX - box.left - left) / width;
+        const next = allowed(rangeNm[0] + part * (rangeNm[1] - rangeNm[0]));
+        if (next === nm) return;
+        props.setDrag({ side, nm: next });
         cancelAnimationFrame(frame.current);
-        frame.current = requestAnimationFrame(() => move(wanted));
+        frame.current = requestAnimationFrame(() => move(next));
       }}
-      onPointerUp={() => setDragged(null)}
-      onPointerCancel={() => setDragged(null)}
+      onPointerUp={end}
+      onPointerCancel={end}
       onKeyDown={(event) => {
-        const step = keys[event.key];
-        const ends = side === 0 ? [limitsNm[0], windowNm[1] - 1] : [windowNm[0] + 1, limitsNm[1]];
-        if (step !== undefined) {
-          begin();
-          move(windowNm[side] + step * (event.shiftKey ? 10 : 1));
-        } else if (event.key === 'Home' || event.key === 'End') {
-          begin();
-          move(ends[event.key === 'Home' ? 0 : 1] ?? windowNm[side]);
-        } else return;
+        const wanted = keyTarget(event.key, event.shiftKey, nm, [least, most]);
+        if (wanted === null) return;
         event.preventDefault();
+        begin();
+        move(allowed(wanted));
       }}
     >
       <span class="window-edge-label">{nm}</span>

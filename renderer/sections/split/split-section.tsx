@@ -11,31 +11,29 @@ import {
   speciesName,
 } from '../../../analysis/index.ts';
 import { lookClass, SpeciesGlyph } from '../../species/species-glyph.tsx';
+import { whyNotFitted } from '../fit/why-not-fitted.ts';
 import type { SectionProps } from '../section.ts';
 import { adviceFor } from './advice.ts';
 import { doubtTitles } from './doubt-titles.ts';
+import { resultOf } from './split-summary.ts';
+import { wavelengthsText } from './wavelengths-text.ts';
 
-function resultOf({ quantification, aliquot }: SectionProps): AliquotResult | undefined {
-  return quantification?.results.aliquots.find((each) => each.aliquot === aliquot);
-}
+export { splitSummary } from './split-summary.ts';
 
-export function splitSummary(props: SectionProps): string {
-  const result = resultOf(props);
-  const answer = result && answerText(props.sheet, result);
-  return answer ? `${answer.head} (${answer.interval})` : 'no answer yet';
-}
-
+/** The answer of the aliquot that is shown, and what may be thought of it. */
 export function SplitSection(props: SectionProps) {
-  const { sheet, quantification, obstacle } = props;
+  const { sheet, quantification, aliquot } = props;
   const result = resultOf(props);
+  const inRun = sheet.aliquots?.find(({ id }) => id === aliquot)?.run;
+  const run = quantification?.results.runs.find((each) => each.run === inRun);
   if (!result) {
     return (
-      <p class="empty">
-        {obstacle ?? 'The answer appears here once standards and a crude spectrum are in.'}
-      </p>
+      <>
+        <NoAnswer {...props} />
+        {run && run.aliquots > 0 && <RunAnswer sheet={sheet} run={run} />}
+      </>
     );
   }
-  const run = quantification?.results.runs.find((each) => each.run === result.run);
   return (
     <>
       <Answer sheet={sheet} title={`Aliquot ${result.aliquot}`} answer={result} />
@@ -45,6 +43,20 @@ export function SplitSection(props: SectionProps) {
       <Doubts sheet={sheet} result={result} />
       <Budget sheet={sheet} result={result} />
     </>
+  );
+}
+
+/** Why there is nothing to read off, and what would mend it. */
+function NoAnswer(props: SectionProps) {
+  const trouble = whyNotFitted(props);
+  if (trouble === null) {
+    return <p class="empty">The answer appears here once standards and a crude spectrum are in.</p>;
+  }
+  return (
+    <div class="answer" role="status">
+      {props.aliquot !== null && <p class="answer-of">Aliquot {props.aliquot}: no answer</p>}
+      <p class="obstacle">{trouble}</p>
+    </div>
   );
 }
 
@@ -78,7 +90,8 @@ function RunAnswer({ sheet, run }: { readonly sheet: Sheet; readonly run: RunRes
     <div class="run-answer">
       {text && (
         <p>
-          <strong>Run {name}</strong>, {run.aliquots} aliquots together: {text.head}{' '}
+          <strong>Run {name}</strong>,{' '}
+          {run.aliquots === 1 ? 'one aliquot' : `${run.aliquots} aliquots together`}: {text.head}{' '}
           <span class="soft">({text.interval})</span>
         </p>
       )}
@@ -192,7 +205,7 @@ function Doubts({ sheet, result }: { readonly sheet: Sheet; readonly result: Ali
         </p>
       ) : (
         <ol>
-          {doubts.map(({ code, message, species = [] }) => (
+          {doubts.map(({ code, message, species = [], atNm = [] }) => (
             <li key={`${code}-${species.join()}`} class="doubt">
               <strong>{doubtTitles[code]}</strong>
               {species.length > 0 && (
@@ -201,6 +214,7 @@ function Doubts({ sheet, result }: { readonly sheet: Sheet; readonly result: Ali
                   · {species.map((id) => speciesName(sheet, id)).join(', ')}
                 </span>
               )}
+              {atNm.length > 0 && <span class="soft"> · {wavelengthsText(atNm)}</span>}
               <p>{message}</p>
             </li>
           ))}

@@ -1,0 +1,47 @@
+import { Fragment } from 'preact';
+import {
+  type AliquotResult,
+  figuresText,
+  numberText,
+  type Quantified,
+  quantifiedText,
+} from '../../../analysis/index.ts';
+import { noiseText } from './noise-text.ts';
+
+/** How well the fit lies on the points, in figures. */
+export function FitFigures({ fit }: { readonly fit: AliquotResult['fit'] }) {
+  const { noise, shiftNm, baseline } = fit;
+  return (
+    <dl class="figures">
+      <dt>points</dt>
+      <dd>{fit.points}</dd>
+      <dt>residual, rms</dt>
+      <dd>{figuresText(1000 * fit.residualRms)} mAU</dd>
+      <dt>reduced χ²</dt>
+      <dd>{fit.reducedChiSquare === null ? 'not known' : numberText(fit.reducedChiSquare, 2)}</dd>
+      <dt>noise, {noise.from === 'sheet' ? 'given' : 'estimated'}</dt>
+      <dd>{noiseText(noise)}</dd>
+      {shiftNm.standardUncertainty !== 0 && (
+        <>
+          <dt>wavelength offset</dt>
+          <dd>{withUncertainty(shiftNm, 'plain', 'nm')}</dd>
+        </>
+      )}
+      {baseline.map(({ term, absorbance }) => (
+        <Fragment key={term}>
+          <dt>baseline {term}</dt>
+          <dd>{withUncertainty(absorbance, 'milliabsorbance', 'mAU')}</dd>
+        </Fragment>
+      ))}
+    </dl>
+  );
+}
+
+function withUncertainty(
+  quantity: Quantified,
+  unit: 'plain' | 'milliabsorbance',
+  name: string,
+): string {
+  const { value, uncertainty } = quantifiedText(quantity, { unit });
+  return `${value} ${name} (u ${uncertainty})`;
+}
