@@ -14,7 +14,7 @@ import type { MenuCommand, OpenedFile } from '../../main/desktop/channels.ts';
 import { addExports } from '../import/imports.ts';
 import type { SheetSource } from '../platform/platform.ts';
 import { platform } from '../platform/this-platform.ts';
-import { attempt, notify, tellRefusal } from '../state/notices.ts';
+import { attempt, mention, notify, tellRefusal } from '../state/notices.ts';
 import {
   change,
   fileName,
@@ -148,7 +148,7 @@ async function save(handle: unknown): Promise<void> {
   const saved = await platform.saveSheet(sheetText(written), handle, `${baseName()}.sheet.json`);
   if (!saved) return;
   markSaved(written, saved.name, saved.handle);
-  notify('news', `Saved as ${saved.name}.`);
+  mention(`Saved as ${saved.name}.`);
 }
 
 async function exported(kind: 'csv' | 'html'): Promise<void> {
@@ -167,7 +167,7 @@ function present(): Sheet {
 }
 
 function tellWritten(name: string | null): void {
-  if (name !== null) notify('news', `Written: ${name}.`);
+  if (name !== null) mention(`Written: ${name}.`);
 }
 
 function baseName(): string {

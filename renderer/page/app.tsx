@@ -20,6 +20,7 @@ import {
   change,
   chooseAliquot,
   isOpen,
+  isWorking,
   obstacle,
   quantification,
   sheet,
@@ -30,7 +31,6 @@ import { Dialogs } from './dialogs.tsx';
 import { isDragging } from './drops.ts';
 import { Empty } from './empty.tsx';
 import { Header } from './header.tsx';
-import { Notices } from './notices.tsx';
 import { SheetSection } from './sheet-section.tsx';
 import { SheetTitle } from './sheet-title.tsx';
 import { Shelf } from './shelf.tsx';
@@ -40,10 +40,9 @@ export function App() {
   return (
     <div class="page" data-dragging={isDragging.value || undefined}>
       <Header />
-      <Notices />
       <div class="page-body">
         {isOpen.value && <Shelf />}
-        <main>{isOpen.value ? <Sections /> : <Empty />}</main>
+        <main aria-busy={isWorking.value}>{isOpen.value ? <Sections /> : <Empty />}</main>
       </div>
       <Dialogs />
     </div>
@@ -117,7 +116,7 @@ function Awaited() {
   const files = awaited.value;
   if (files.length === 0) return null;
   return (
-    <div class="notice notice-refusal" role="status">
+    <div class="notice notice-asking" role="status">
       <div>
         <p>
           The sheet names {files.length === 1 ? 'a file that is' : `${files.length} files that are`}{' '}

@@ -10,6 +10,7 @@ import {
   undoLabel,
 } from '../state/store.ts';
 import { run } from './actions.ts';
+import { Notices } from './notices.tsx';
 
 /** Title and what can be done with the sheet as a whole. */
 export function Header() {
@@ -73,6 +74,7 @@ export function Header() {
       {isOpen.value && sheet.value.invented === true && (
         <p class="invented">Invented data, for demonstration: not the spectra of real compounds.</p>
       )}
+      <Notices />
     </header>
   );
 }

@@ -1,6 +1,6 @@
 import { useState } from 'preact/hooks';
 import { cancelReading, reading } from '../import/imports.ts';
-import { dismiss, type Notice, notices } from '../state/notices.ts';
+import { dismiss, dismissAll, type Notice, notices } from '../state/notices.ts';
 
 /** What the program has to tell, until it is dismissed. */
 export function Notices() {
@@ -21,11 +21,18 @@ export function Notices() {
       {notices.value.map((notice) => (
         <NoticeCard key={notice.id} notice={notice} />
       ))}
+      {notices.value.length > 2 && (
+        <p class="notices-end">
+          <button type="button" class="quiet" onClick={dismissAll}>
+            Dismiss all {notices.value.length}
+          </button>
+        </p>
+      )}
     </section>
   );
 }
 
-const fewLines = 4;
+const fewLines = 3;
 
 function NoticeCard({ notice }: { readonly notice: Notice }) {
   const { id, kind, text, details = [], copy } = notice;

@@ -21,11 +21,25 @@ export function notify(kind: Notice['kind'], text: string, details?: readonly st
 }
 
 /** The same words told again replace those before: a fault that comes with every key stands once. */
-function tell(telling: Telling): void {
+function tell(telling: Telling): number {
   const words = ({ kind, text, details = [] }: Telling): string =>
     JSON.stringify([kind, text, details]);
   const others = notices.value.filter((notice) => words(notice) !== words(telling));
-  notices.value = [...others, { ...telling, id: next++ }];
+  const id = next++;
+  notices.value = [...others, { ...telling, id }];
+  return id;
+}
+
+const passingMs = 10_000;
+
+/** News that the page shows elsewhere too ("saved"): it goes by itself after a while. */
+export function mention(text: string): void {
+  const id = tell({ kind: 'news', text });
+  setTimeout(() => dismiss(id), passingMs);
+}
+
+export function dismissAll(): void {
+  notices.value = [];
 }
 
 export function dismiss(id: number): void {

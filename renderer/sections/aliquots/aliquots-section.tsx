@@ -102,10 +102,14 @@ function AliquotRow({
   const set = (label: string, changes: Parameters<typeof updateAliquot>[2]): void =>
     change(label, (before) => updateAliquot(before, id, changes));
   const name = spectrum.embedded?.name ?? spectrum.file ?? id;
+  const source = sourceName(spectrum.embedded?.source?.file, name);
   return (
     <tr>
       <td>
-        {id} <span class="soft source">{sourceName(spectrum.embedded?.source?.file, name)}</span>
+        {id}{' '}
+        <span class="soft source" title={source}>
+          {source}
+        </span>
       </td>
       <td>
         <Choice

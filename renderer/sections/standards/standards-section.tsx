@@ -160,6 +160,7 @@ function StandardRow({
   const set = (label: string, changes: Parameters<typeof updateStandard>[2]): void =>
     change(label, (before) => updateStandard(before, id, changes));
   const name = spectrum.embedded?.name ?? spectrum.file ?? id;
+  const source = sourceName(spectrum.embedded?.source?.file, name);
   const stocks = (sheet.stocks ?? []).filter((each) => each.species === species);
   return (
     <tr>
@@ -168,7 +169,9 @@ function StandardRow({
           <SpeciesGlyph sheet={sheet} id={species} />
           <span>
             {id}{' '}
-            <span class="soft source">{sourceName(spectrum.embedded?.source?.file, name)}</span>
+            <span class="soft source" title={source}>
+              {source}
+            </span>
           </span>
         </span>
       </td>

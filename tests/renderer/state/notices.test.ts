@@ -1,9 +1,20 @@
-import { beforeEach, describe, expect, it } from 'vitest';
+import { afterEach, beforeEach, describe, expect, it, vi } from 'vitest';
 import { Refusal } from '../../../analysis/index.ts';
-import { attempt, dismiss, notices, notify } from '../../../renderer/state/notices.ts';
+import {
+  attempt,
+  dismiss,
+  dismissAll,
+  mention,
+  notices,
+  notify,
+} from '../../../renderer/state/notices.ts';
 
 beforeEach(() => {
-  for (const { id } of notices.value) dismiss(id);
+  dismissAll();
+});
+
+afterEach(() => {
+  vi.useRealTimers();
 });
 
 describe('what goes wrong', () => {
@@ -50,5 +61,14 @@ describe('notices', () => {
     const [first] = notices.value;
     if (first) dismiss(first.id);
     expect(notices.value.map(({ text }) => text)).toEqual(['two']);
+  });
+
+  it('go by themselves only where the page says the same elsewhere', () => {
+    vi.useFakeTimers();
+    notify('refusal', 'a file could not be read');
+    mention('Saved as a.sheet.json.');
+    expect(notices.value).toHaveLength(2);
+    vi.advanceTimersByTime(60_000);
+    expect(notices.value.map(({ text }) => text)).toEqual(['a file could not be read']);
   });
 });
