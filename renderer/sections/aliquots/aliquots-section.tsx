@@ -1,26 +1,17 @@
 import {
   addRun,
   removeAliquot,
-  removeRun,
   type SheetAliquot,
-  type SheetRun,
-  speciesName,
   updateAliquot,
-  updateRun,
 } from '../../../analysis/index.ts';
+import { committed } from '../../fields/committed.ts';
 import { Choice, Field } from '../../fields/field.tsx';
 import { keptDilution, parseDilution, shownDilution } from '../../fields/parse-dilution.ts';
-import {
-  type Entry,
-  parseNonNegative,
-  parsePathLength,
-  parsePercent,
-  parsePositive,
-  shown,
-} from '../../fields/parse-entry.ts';
+import { parsePathLength, parsePercent, shown } from '../../fields/parse-entry.ts';
 import { LoadLine } from '../../import/load-line.tsx';
 import type { SectionProps } from '../section.ts';
-import { sourceName } from '../standards/standards-section.tsx';
+import { sourceName } from '../source-name.ts';
+import { RunsTable } from './runs-table.tsx';
 
 export function aliquotsSummary({ sheet }: SectionProps): string {
   const [aliquots, runs] = [sheet.aliquots?.length ?? 0, sheet.runs?.length ?? 0];
@@ -32,12 +23,6 @@ export function aliquotsNeeds({ sheet }: SectionProps): string | null {
 }
 
 const newRun = '\u0000new';
-const orders = [
-  { value: '', text: 'not said' },
-  { value: 'arm-into-core', text: 'arm into core' },
-  { value: 'core-into-arm', text: 'core into arm' },
-  { value: 'together', text: 'together' },
-];
 
 export function AliquotsSection(props: SectionProps) {
   const { sheet, change } = props;
@@ -182,133 +167,4 @@ function AliquotRow({
       </td>
     </tr>
   );
-}
-
-function RunsTable({ sheet, change, runs }: SectionProps & { readonly runs: readonly SheetRun[] }) {
-  const { core, arm } = sheet.reaction;
-  return (
-    <table class="ledger">
-      <caption>Runs: how each was done</caption>
-      <thead>
-        <tr>
-          <th scope="col">Run</th>
-          <th scope="col">order of addition</th>
-          <th scope="col" class="number">
-            {speciesName(sheet, core)}, mmol
-          </th>
-          <th scope="col" class="number">
-            {speciesName(sheet, arm)}, mmol
-          </th>
-          <th scope="col" class="number">
-            volume, mL
-          </th>
-          <th scope="col" class="number">
-            addition, min
-          </th>
-          <th scope="col">
-            <span class="unseen">Remove</span>
-          </th>
-        </tr>
-      </thead>
-      <tbody>
-        {runs.map((run) => {
-          const { id, name = '', order, chargedMol = {}, volumeL, additionTimeMin } = run;
-          const called = name || id;
-          const set = (label: string, changes: Parameters<typeof updateRun>[2]): void =>
-            change(label, (before) => updateRun(before, id, changes));
-          const setCharge = (species: string) => (value: number | undefined) => {
-            const { [species]: _, ...rest } = chargedMol;
-            set('set charge', {
-              chargedMol: value === undefined ? rest : { ...rest, [species]: value / 1000 },
-            });
-          };
-          return (
-            <tr key={id}>
-              <td class="wide">
-                <Field
-                  label={`Name of run ${id}`}
-                  value={name}
-                  placeholder={id}
-                  commit={(text) => {
-                    set('name run', { name: text.trim() });
-                    return null;
-                  }}
-                />
-              </td>
-              <td>
-                <Choice
-                  label={`Order of addition of ${called}`}
-                  value={order ?? ''}
-                  options={orders}
-                  choose={(next) => set('set order', { order: orderOf(next) })}
-                />
-              </td>
-              {[core, arm].map((species) => (
-                <td class="number" key={species}>
-                  <Field
-                    label={`${speciesName(sheet, species)} charged in ${called}, mmol`}
-                    align="right"
-                    placeholder="–"
-                    value={shown(chargedMol[species], 1000)}
-                    commit={committed(parsePositive, setCharge(species))}
-                  />
-                </td>
-              ))}
-              <td class="number">
-                <Field
-                  label={`Volume of ${called} in mL`}
-                  align="right"
-                  placeholder="–"
-                  value={shown(volumeL, 1000)}
-                  commit={committed(parsePositive, (value) =>
-                    set('set volume', { volumeL: value === undefined ? undefined : value / 1000 }),
-                  )}
-                />
-              </td>
-              <td class="number">
-                <Field
-                  label={`Time of addition of ${called} in min`}
-                  align="right"
-                  placeholder="–"
-                  value={shown(additionTimeMin)}
-                  commit={committed(parseNonNegative, (value) =>
-                    set('set addition time', { additionTimeMin: value }),
-                  )}
-                />
-              </td>
-              <td>
-                <button
-                  type="button"
-                  class="remove"
-                  aria-label={`Remove run ${called}`}
-                  onClick={() => change(`remove run ${called}`, (before) => removeRun(before, id))}
-                >
-                  ×
-                </button>
-              </td>
-            </tr>
-          );
-        })}
-      </tbody>
-    </table>
-  );
-}
-
-function orderOf(value: string): SheetRun['order'] | undefined {
-  return value === 'arm-into-core' || value === 'core-into-arm' || value === 'together'
-    ? value
-    : undefined;
-}
-
-/** A commit that parses, then hands the number on. */
-function committed(
-  parse: (text: string) => Entry,
-  take: (value: number | undefined) => void,
-): (text: string) => string | null {
-  return (text) => {
-    const entry = parse(text);
-    if (!entry.ok) return entry.message;
-    take(entry.value);
-    return null;
-  };
 }

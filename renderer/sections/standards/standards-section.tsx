@@ -2,11 +2,9 @@ import {
   absorbingSpecies,
   addStockFor,
   removeStandard,
-  removeStock,
   type SheetStandard,
   speciesName,
   updateStandard,
-  updateStock,
 } from '../../../analysis/index.ts';
 import { Choice, Field } from '../../fields/field.tsx';
 import {
@@ -19,6 +17,8 @@ import { LoadLine } from '../../import/load-line.tsx';
 import { StandardsPlot } from '../../plots/standards-plot.tsx';
 import { SpeciesGlyph } from '../../species/species-glyph.tsx';
 import type { SectionProps } from '../section.ts';
+import { sourceName } from '../source-name.ts';
+import { StocksTable } from './stocks-table.tsx';
 
 export function standardsSummary({ sheet }: SectionProps): string {
   const standards = sheet.standards ?? [];
@@ -43,7 +43,7 @@ export function standardsNeeds({ sheet }: SectionProps): string | null {
 const newStock = '\u0000new';
 
 export function StandardsSection(props: SectionProps) {
-  const { sheet, quantification, change } = props;
+  const { sheet, quantification } = props;
   const standards = sheet.standards ?? [];
   const stocks = sheet.stocks ?? [];
   if (standards.length === 0) {
@@ -89,60 +89,7 @@ export function StandardsSection(props: SectionProps) {
         </tbody>
       </table>
       <LoadLine destination="standards" what="more exports of standards" />
-      {stocks.length > 0 && (
-        <table class="ledger narrow">
-          <caption>Stocks: an error common to all standards made from one</caption>
-          <thead>
-            <tr>
-              <th scope="col">Stock</th>
-              <th scope="col">of</th>
-              <th scope="col" class="number">
-                u, %
-              </th>
-              <th scope="col">
-                <span class="unseen">Remove</span>
-              </th>
-            </tr>
-          </thead>
-          <tbody>
-            {stocks.map(({ id, species, relativeStandardUncertainty }) => (
-              <tr key={id}>
-                <td>{id}</td>
-                <td>{speciesName(sheet, species)}</td>
-                <td class="number">
-                  <Field
-                    label={`Relative standard uncertainty of stock ${id} in %`}
-                    align="right"
-                    value={shown(relativeStandardUncertainty, 100)}
-                    placeholder="not given"
-                    commit={(text) => {
-                      const entry = parsePercent(text);
-                      if (!entry.ok) return entry.message;
-                      const { value } = entry;
-                      change('set stock uncertainty', (before) =>
-                        updateStock(before, id, { relativeStandardUncertainty: value }),
-                      );
-                      return null;
-                    }}
-                  />
-                </td>
-                <td>
-                  <button
-                    type="button"
-                    class="remove"
-                    aria-label={`Remove stock ${id}`}
-                    onClick={() =>
-                      change(`remove stock ${id}`, (before) => removeStock(before, id))
-                    }
-                  >
-                    ×
-                  </button>
-                </td>
-              </tr>
-            ))}
-          </tbody>
-        </table>
-      )}
+      {stocks.length > 0 && <StocksTable {...props} stocks={stocks} />}
       {quantification && quantification.standards.length > 0 && (
         <StandardsPlot standards={quantification.standards} sheet={sheet} />
       )}
@@ -258,11 +205,4 @@ function StandardRow({
       </td>
     </tr>
   );
-}
-
-/** "bis.csv, trace name": the file where it is known, and the trace's own name where it says more. */
-export function sourceName(file: string | undefined, name: string): string {
-  if (file === undefined) return name;
-  const last = file.split(/[\\/]/).at(-1) ?? file;
-  return name === '' || last.startsWith(name) ? last : `${last}, ${name}`;
 }
