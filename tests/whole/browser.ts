@@ -85,7 +85,13 @@ function writeFontSettings(folder: string): void {
 <fontconfig>
 ${folders.map((each) => `  <dir>${each}</dir>`).join('\n')}
   <cachedir>${path.join(folder, 'font-cache')}</cachedir>
+${['system-ui', 'sans-serif'].map(preferred).join('\n')}
 </fontconfig>
 `;
   writeFileSync(path.join(folder, 'fonts/fonts.conf'), settings);
+}
+
+/** Without it a bold weight may be taken from any family that happens to be installed. */
+function preferred(family: string): string {
+  return `  <alias binding="strong"><family>${family}</family><prefer><family>Open Sans</family></prefer></alias>`;
 }
