@@ -4,7 +4,7 @@ import { CurvesTable } from './curves-table.tsx';
 import { fitFigure, fitMargin } from './fit-figure.ts';
 import { PlotFrame } from './plot-frame.tsx';
 import { useLabels } from './species-labels.ts';
-import { plotTheme } from './theme.ts';
+import type { PlotTheme } from './theme.ts';
 import { WindowHandles } from './window-handles.tsx';
 import { useZoom, ZoomControls } from './zoom.tsx';
 import type { RangeNm } from './zoom-range.ts';
@@ -25,7 +25,6 @@ const noRanges: readonly RangeNm[] = [];
 
 /** The crude spectrum taken apart, with the edges of the fit window to take hold of. */
 export function FitPlot({ sheet, curves, doubts, windowNm, onWindow }: FitPlotProps) {
-  const theme = plotTheme.value;
   const { wavelengthNm } = curves;
   const [first, last] = [wavelengthNm[0] ?? 0, wavelengthNm.at(-1) ?? 1];
   const zoom = useZoom([first - roomNm, last + roomNm]);
@@ -34,7 +33,7 @@ export function FitPlot({ sheet, curves, doubts, windowNm, onWindow }: FitPlotPr
   const labels = useLabels(sheet);
   // not the sheet itself: it is another one at every step of a drag, long before there is another fit
   const figure = useCallback(
-    (widthPx: number) =>
+    (widthPx: number, theme: PlotTheme) =>
       fitFigure({
         labels,
         excludeNm,
@@ -45,7 +44,7 @@ export function FitPlot({ sheet, curves, doubts, windowNm, onWindow }: FitPlotPr
         widthPx,
         heightPx: height,
       }),
-    [labels, excludeNm, curves, doubts, theme, low, high],
+    [labels, excludeNm, curves, doubts, low, high],
   );
   const margin = fitMargin(doubts, zoom.range);
   return (
@@ -57,16 +56,18 @@ export function FitPlot({ sheet, curves, doubts, windowNm, onWindow }: FitPlotPr
       onZoom={zoom.onZoom}
       controls={<ZoomControls {...zoom} />}
       table={() => <CurvesTable sheet={sheet} curves={curves} />}
-      pictureShapes={windowNm.map((nm) => ({
-        type: 'line',
-        xref: 'x',
-        yref: 'paper',
-        x0: nm,
-        x1: nm,
-        y0: 0,
-        y1: 1,
-        line: { color: theme.soft, width: 1 },
-      }))}
+      pictureShapes={(theme) =>
+        windowNm.map((nm) => ({
+          type: 'line',
+          xref: 'x',
+          yref: 'paper',
+          x0: nm,
+          x1: nm,
+          y0: 0,
+          y1: 1,
+          line: { color: theme.soft, width: 1 },
+        }))
+      }
       overlay={(width) => (
         <WindowHandles
           windowNm={windowNm}

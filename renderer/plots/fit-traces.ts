@@ -1,11 +1,12 @@
 import type { Data } from 'plotly.js-dist-min';
 import { leftOut } from '../../analysis/index.ts';
+import { bandTrace } from './band.ts';
 import type { FitFigureInput } from './figure.ts';
 import { residualRange } from './fit-ranges.ts';
 import { leftOutLooks } from './left-out.ts';
 import { speciesColour, speciesDash } from './species-line.ts';
 
-/** Cumulative sums of the contributions, from the baseline up. */
+/** Each contribution on those before it, from the baseline up. */
 export function stackTraces({ labels, curves, theme }: FitFigureInput): Data[] {
   const x = curves.wavelengthNm;
   let below = curves.baseline;
@@ -18,24 +19,25 @@ export function stackTraces({ labels, curves, theme }: FitFigureInput): Data[] {
     name: 'baseline',
     hoverinfo: 'skip',
   };
-  const layers = curves.contributions.map(({ species, absorbance }, k): Data => {
+  const layers = curves.contributions.map(({ species, absorbance }, k): [Data, Data] => {
     const colour = speciesColour(k, theme);
-    const top = below.map((value, i) => value + (absorbance[i] ?? Number.NaN));
-    below = top;
-    return {
+    const name = labels.get(species) ?? species;
+    const low = below;
+    const high = low.map((value, i) => value + (absorbance[i] ?? Number.NaN));
+    below = high;
+    const line: Data = {
       type: 'scatter',
       mode: 'lines',
       x,
-      y: top,
-      fill: 'tonexty',
-      fillcolor: `${colour}2e`,
+      y: high,
       line: { width: 1.4, color: colour, dash: speciesDash(k) },
-      name: labels.get(species) ?? species,
+      name,
       customdata: absorbance,
       hovertemplate: '%{customdata:.4f}',
     };
+    return [bandTrace({ x, low, high }, { name: `${name}, area`, fillcolor: `${colour}2e` }), line];
   });
-  return [floor, ...layers];
+  return [floor, ...layers.map(([area]) => area), ...layers.map(([, line]) => line)];
 }
 
 /** The fitted line, the points it is fitted to, and those that are left out, by reason. */
@@ -88,7 +90,6 @@ export function residualTraces({ curves, theme, rangeNm }: FitFigureInput): Data
     residual.map((_, i) => (use[i] === leftOut.used ? 1000 * value(i) : Number.NaN));
   const band = (sign: number) => used((i) => sign * 2 * (expectedSd[i] ?? Number.NaN));
   const values = used((i) => residual[i] ?? Number.NaN);
-  const edge = { width: 0, color: theme.faint };
   const shared = { type: 'scatter' as const, x, yaxis: 'y2' as const };
   const [, reach] = residualRange(curves, rangeNm);
   const beyond = (symbol: 'triangle-up' | 'triangle-down', side: 1 | -1): Data[] => {
@@ -99,17 +100,10 @@ export function residualTraces({ curves, theme, rangeNm }: FitFigureInput): Data
       : [{ ...shared, mode: 'markers', y, marker, hoverinfo: 'skip', name: 'beyond the strip' }];
   };
   return [
-    { ...shared, mode: 'lines', y: band(-1), line: edge, hoverinfo: 'skip', name: '−2σ' },
-    {
-      ...shared,
-      mode: 'lines',
-      y: band(1),
-      line: edge,
-      fill: 'tonexty',
-      fillcolor: `${theme.faint}40`,
-      hoverinfo: 'skip',
-      name: '+2σ',
-    },
+    bandTrace(
+      { x, low: band(-1), high: band(1) },
+      { name: '±2σ', fillcolor: `${theme.faint}40`, yaxis: 'y2' },
+    ),
     {
       ...shared,
       mode: 'lines',

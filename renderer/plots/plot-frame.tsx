@@ -6,7 +6,7 @@ import { latestOnly } from '../worker/latest.ts';
 import type { Figure } from './figure.ts';
 import './plot-frame.css';
 import { clear, draw, imageOf } from './plotly.ts';
-import { plotTheme } from './theme.ts';
+import { type PlotTheme, paperTheme, plotTheme } from './theme.ts';
 import type { RangeNm } from './zoom-range.ts';
 
 interface PlotFrameProps {
@@ -16,13 +16,13 @@ interface PlotFrameProps {
   readonly name: string;
   readonly height: number;
   /** Draws itself anew only where this function is a new one. */
-  readonly figure: (widthPx: number) => Figure;
+  readonly figure: (widthPx: number, theme: PlotTheme) => Figure;
   /** The same numbers as a table. */
   readonly table: () => ComponentChildren;
   /** Lies over the plot; told the plot's width in px. */
   readonly overlay?: (width: number) => ComponentChildren;
   /** What the overlay stands for, in an exported picture. */
-  readonly pictureShapes?: readonly Partial<Shape>[];
+  readonly pictureShapes?: (theme: PlotTheme) => readonly Partial<Shape>[];
   /** The range of the abscissa that was zoomed to with the pointer; null for all. */
   readonly onZoom: (range: RangeNm | null) => void;
   readonly controls: ComponentChildren;
@@ -35,13 +35,14 @@ interface Drawing {
 
 /** A plot with its few controls: as a table, as SVG or PNG, and whatever its owner adds. */
 export function PlotFrame(props: PlotFrameProps) {
-  const { label, name, height, figure, table, overlay, pictureShapes = [], controls } = props;
+  const { label, name, height, figure, table, overlay, pictureShapes, controls } = props;
   const place = useRef<HTMLDivElement>(null);
   const onZoom = useRef(props.onZoom);
   onZoom.current = props.onZoom;
   const width = useWidth(place);
   const [isTable, setIsTable] = useState(false);
-  const drawn = useMemo(() => (width > 0 ? figure(width) : null), [figure, width]);
+  const theme = plotTheme.value;
+  const drawn = useMemo(() => (width > 0 ? figure(width, theme) : null), [figure, width, theme]);
   const show = useMemo(() => pacedDraw(place, (range) => onZoom.current(range)), []);
   useEffect(() => {
     if (drawn) show({ figure: drawn, size: { width, height } });
@@ -53,13 +54,13 @@ export function PlotFrame(props: PlotFrameProps) {
     };
   }, []);
   const save = async (format: 'svg' | 'png'): Promise<void> => {
-    if (!drawn) return;
-    const { data, layout } = drawn;
+    if (width === 0) return;
+    const paper = paperTheme();
+    const { data, layout } = figure(width, paper);
     const picture = {
       ...layout,
-      // a picture goes onto paper of any colour
-      paper_bgcolor: plotTheme.value.paper,
-      shapes: [...(layout.shapes ?? []), ...pictureShapes],
+      paper_bgcolor: paper.paper,
+      shapes: [...(layout.shapes ?? []), ...(pictureShapes?.(paper) ?? [])],
     };
     const link = document.createElement('a');
     link.href = await imageOf(data, picture, { format, width, height });
@@ -90,7 +91,12 @@ export function PlotFrame(props: PlotFrameProps) {
           {isTable ? 'Hide the table' : 'Show as a table'}
         </button>
       </div>
-      {isTable && <div class="plot-table">{table()}</div>}
+      {isTable && (
+        // biome-ignore lint/a11y/noNoninteractiveTabindex: what scrolls must scroll from the keyboard
+        <section class="plot-table" tabIndex={0} aria-label={`${label}, as a table`}>
+          {table()}
+        </section>
+      )}
     </figure>
   );
 }

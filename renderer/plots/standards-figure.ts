@@ -1,6 +1,7 @@
 import type { Annotation, Data } from 'plotly.js-dist-min';
 import type { StandardCurves } from '../../analysis/index.ts';
 import { axisLook, plotLook, wavelengthAxis } from './axis-look.ts';
+import { bandTrace } from './band.ts';
 import type { Figure } from './figure.ts';
 import { type Box, boxAround, firstClear, type Point } from './label-boxes.ts';
 import { speciesColour, speciesDash } from './species-line.ts';
@@ -92,16 +93,11 @@ function noiseBand(
   if (!isVisible) return [];
   const edge = (sign: number): Float64Array =>
     molarAbsorptivity.map((value, i) => value + sign * 2 * (noiseSd[i] ?? Number.NaN));
-  const shared = {
-    type: 'scatter' as const,
-    mode: 'lines' as const,
-    x: wavelengthNm,
-    line: { width: 0, color: colour },
-    hoverinfo: 'skip' as const,
-  };
   return [
-    { ...shared, y: edge(-1), name: '−2σ' },
-    { ...shared, y: edge(1), name: '+2σ', fill: 'tonexty', fillcolor: `${colour}33` },
+    bandTrace(
+      { x: wavelengthNm, low: edge(-1), high: edge(1) },
+      { name: '±2σ', fillcolor: `${colour}33` },
+    ),
   ];
 }
 

@@ -3,7 +3,7 @@ import { numberText, type Sheet, type StandardCurves, speciesLabel } from '../..
 import { PlotFrame } from './plot-frame.tsx';
 import { useLabels } from './species-labels.ts';
 import { sameStandards, standardsFigure, standardsRange } from './standards-figure.ts';
-import { plotTheme } from './theme.ts';
+import type { PlotTheme } from './theme.ts';
 import { tableRows, thinningText } from './thinned.ts';
 import { useZoom, ZoomControls } from './zoom.tsx';
 
@@ -16,7 +16,6 @@ const height = 300;
 
 /** Molar absorptivity of each species, with each solution by itself as a thin line behind. */
 export function StandardsPlot({ standards, sheet }: StandardsPlotProps) {
-  const theme = plotTheme.value;
   // every answer brings new arrays; they seldom hold anything new
   const kept = useRef(standards);
   if (!sameStandards(kept.current, standards)) kept.current = standards;
@@ -25,7 +24,7 @@ export function StandardsPlot({ standards, sheet }: StandardsPlotProps) {
   const zoom = useZoom(standardsRange(shown));
   const [low, high] = zoom.range;
   const figure = useCallback(
-    (widthPx: number) =>
+    (widthPx: number, theme: PlotTheme) =>
       standardsFigure({
         standards: shown,
         labels,
@@ -34,7 +33,7 @@ export function StandardsPlot({ standards, sheet }: StandardsPlotProps) {
         widthPx,
         heightPx: height,
       }),
-    [shown, labels, theme, low, high],
+    [shown, labels, low, high],
   );
   return (
     <PlotFrame

@@ -20,6 +20,19 @@ dark.addEventListener('change', () => {
   plotTheme.value = resolved();
 });
 
+/** As on paper, whatever the screen's theme: a picture goes into a document. */
+export function paperTheme(): PlotTheme {
+  const root = document.documentElement;
+  const before = root.dataset.theme;
+  root.dataset.theme = 'light';
+  try {
+    return { ...resolved(), isDark: false };
+  } finally {
+    if (before === undefined) delete root.dataset.theme;
+    else root.dataset.theme = before;
+  }
+}
+
 function resolved(): PlotTheme {
   const style = getComputedStyle(document.documentElement);
   const token = (name: string): string => style.getPropertyValue(name).trim();

@@ -53,10 +53,10 @@ function NoAnswer(props: SectionProps) {
     return <p class="empty">The answer appears here once standards and a crude spectrum are in.</p>;
   }
   return (
-    <div class="answer" role="status">
-      {props.aliquot !== null && <p class="answer-of">Aliquot {props.aliquot}: no answer</p>}
-      <p class="obstacle">{trouble}</p>
-    </div>
+    <p class="obstacle" role="status">
+      {props.aliquot !== null && `No answer from aliquot ${props.aliquot}. `}
+      {trouble}
+    </p>
   );
 }
 

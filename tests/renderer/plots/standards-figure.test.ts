@@ -34,7 +34,7 @@ describe('the plot of the standards', () => {
           ...one,
           noiseSd: one.noiseSd.map((_, i) => factor * Math.abs(one.molarAbsorptivity[i] ?? 0)),
         })),
-      }).data.filter(({ name }) => name === '+2σ').length;
+      }).data.filter(({ name }) => name === '±2σ').length;
     expect(bands(0.05)).toBe(3);
     expect(bands(1e-6)).toBe(0);
   });
