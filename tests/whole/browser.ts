@@ -76,22 +76,15 @@ async function packagedBrowser(): Promise<string> {
 
 /**
  * Its own font settings look in /tmp/fonts only: with another TMPDIR it finds no font at all and
- * stops at the first text field.
+ * stops at the first text field. Only its own: what else a machine has would change the picture.
  */
 function writeFontSettings(folder: string): void {
-  const folders = [path.join(folder, 'fonts'), '/usr/share/fonts'];
   const settings = `<?xml version="1.0"?>
 <!DOCTYPE fontconfig SYSTEM "fonts.dtd">
 <fontconfig>
-${folders.map((each) => `  <dir>${each}</dir>`).join('\n')}
+  <dir>${path.join(folder, 'fonts')}</dir>
   <cachedir>${path.join(folder, 'font-cache')}</cachedir>
-${['system-ui', 'sans-serif'].map(preferred).join('\n')}
 </fontconfig>
 `;
   writeFileSync(path.join(folder, 'fonts/fonts.conf'), settings);
-}
-
-/** Without it a bold weight may be taken from any family that happens to be installed. */
-function preferred(family: string): string {
-  return `  <alias binding="strong"><family>${family}</family><prefer><family>Open Sans</family></prefer></alias>`;
 }
