@@ -9,6 +9,7 @@ export { readingToJson } from './reading/reading-to-json.ts';
 export { sheetSources } from './reading/sheet-sources.ts';
 export { tooLargeReading } from './reading/too-large.ts';
 export { Refusal, type RefusalText, refusalSentence } from './refusal.ts';
+export { doubtTitles } from './report/doubt-titles.ts';
 export { labelSpot } from './report/label-spot.ts';
 export {
   figuresText,

@@ -132,14 +132,7 @@ export interface AliquotCurves {
 }
 
 /** Meaning of the numbers in `AliquotCurves.use`. */
-export const leftOut = {
-  used: 0,
-  outsideWindow: 1,
-  excluded: 2,
-  missing: 3,
-  aboveUpperAbsorbance: 4,
-  noStandard: 5,
-} as const;
+export { pointUse as leftOut } from '../unmixing/choose-points.ts';
 
 /** Molar absorptivity of one species, for plots. L mol⁻¹ cm⁻¹. */
 export interface StandardCurves {

@@ -2,7 +2,7 @@ import type { FitSettings } from '../sheet/defaults.ts';
 import type { Spectrum } from '../spectrum/spectrum.ts';
 import type { MolarAbsorptivity } from '../standards/molar-absorptivity.ts';
 
-/** Why a point of the crude is not fitted; 0 is used. The same numbers as `leftOut` of the results. */
+/** Why a point of the crude is not fitted; 0 is used. */
 export const pointUse = {
   used: 0,
   outsideWindow: 1,

@@ -1,6 +1,7 @@
 import {
   type AliquotResult,
   answerText,
+  doubtTitles,
   figuresText,
   type Quantified,
   quantifiedText,
@@ -14,7 +15,6 @@ import { lookClass, SpeciesGlyph } from '../../species/species-glyph.tsx';
 import { whyNotFitted } from '../fit/why-not-fitted.ts';
 import type { SectionProps } from '../section.ts';
 import { adviceFor } from './advice.ts';
-import { doubtTitles } from './doubt-titles.ts';
 import { resultOf } from './split-summary.ts';
 import { wavelengthsText } from './wavelengths-text.ts';
 
