@@ -1,5 +1,5 @@
 /** The only door to the science: what main/ and renderer/ may import. */
-export type { Doubt, DoubtCode } from './doubts/doubt.ts';
+export type { Doubt } from './doubts/doubt.ts';
 export { programName } from './program.ts';
 export { type PreparedSheet, prepare, quantify, quantifyAliquot } from './quantify.ts';
 export { embeddedFrom } from './reading/embedded.ts';
