@@ -7,14 +7,14 @@ import {
   quantifiedText,
   type RunResult,
   type Sheet,
-  type SplitFraction,
   speciesLabel,
   speciesName,
 } from '../../../analysis/index.ts';
-import { lookClass, SpeciesGlyph } from '../../species/species-glyph.tsx';
+import { SpeciesGlyph } from '../../species/species-glyph.tsx';
 import { whyNotFitted } from '../fit/why-not-fitted.ts';
 import type { SectionProps } from '../section.ts';
 import { adviceFor } from './advice.ts';
+import { SplitBar } from './split-bar.tsx';
 import { resultOf } from './split-summary.ts';
 import { wavelengthsText } from './wavelengths-text.ts';
 
@@ -107,36 +107,6 @@ function RunAnswer({ sheet, run }: { readonly sheet: Sheet; readonly run: RunRes
   );
 }
 
-/** The split as a bar, labelled on itself. */
-export function SplitBar({
-  sheet,
-  split,
-}: {
-  readonly sheet: Sheet;
-  readonly split: readonly SplitFraction[];
-}) {
-  return (
-    <div class="split-bar">
-      {split.map(({ species, fraction }) => {
-        const share = fraction.value ?? 0;
-        const { value } = quantifiedText(fraction, { unit: 'percent' });
-        return (
-          <div
-            key={species}
-            class={`split-part ${lookClass(sheet, species)}`}
-            style={{ flexGrow: Math.max(share, 0.0001) }}
-          >
-            <span class="split-fill" />
-            <span class="split-label">
-              {speciesLabel(sheet, species)} {value} %
-            </span>
-          </div>
-        );
-      })}
-    </div>
-  );
-}
-
 function Ledger({ sheet, result }: { readonly sheet: Sheet; readonly result: AliquotResult }) {
   return (
     <table class="ledger">
@@ -184,7 +154,7 @@ function Ledger({ sheet, result }: { readonly sheet: Sheet; readonly result: Ali
               <td class="interval">{cuvette.interval}</td>
               <td class="number">{detected ? flask.value : '—'}</td>
               <td class="interval">{flask.interval}</td>
-              <td class="number">{share ? share.value : ''}</td>
+              <td class="number">{share ? (detected ? share.value : '—') : ''}</td>
               <td class="interval">{share ? share.interval : ''}</td>
             </tr>
           );
