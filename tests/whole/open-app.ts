@@ -9,7 +9,10 @@ export interface OpenApp {
   readonly page: Page;
   readonly context: BrowserContext;
   readonly address: string;
-  /** Console errors, page errors and violations of the policy so far; [] is what it should be. */
+  /**
+   * Console errors, page and worker errors, violations of the policy and own files that could not
+   * be had, so far; [] is what it should be.
+   */
   readonly problems: () => readonly string[];
   /** Requests that went to any other host; [] is what it should be. */
   readonly strangers: () => readonly string[];
@@ -20,11 +23,13 @@ interface Look {
   readonly width?: number;
   readonly height?: number;
   readonly colorScheme?: 'light' | 'dark';
+  /** The built page; the app's own by default. */
+  readonly folder?: string;
 }
 
 /** Opens the built app from the loopback server in a fresh context. */
 export async function openApp(browser: Browser, look: Look = {}): Promise<OpenApp> {
-  const server = await serveLoopback({ folder: path.join(root, 'dist/renderer') });
+  const server = await serveLoopback({ folder: look.folder ?? path.join(root, 'dist/renderer') });
   const context = await browser.newContext({
     viewport: { width: look.width ?? 1280, height: look.height ?? 800 },
     colorScheme: look.colorScheme ?? 'light',
@@ -32,17 +37,14 @@ export async function openApp(browser: Browser, look: Look = {}): Promise<OpenAp
     reducedMotion: 'reduce',
   });
   const page = await context.newPage();
-  const problems: string[] = [];
+  const problems = await listen(page, server.address);
   const strangers: string[] = [];
-  page.on('console', (message) => {
-    if (message.type() === 'error') problems.push(`console: ${message.text()}`);
-  });
-  page.on('pageerror', (error) => problems.push(`page: ${error.message}`));
+  const isOwn = (url: string) =>
+    url.startsWith(server.address) || url === 'about:blank' || /^(blob|data):/.test(url);
   context.on('request', (request) => {
-    const url = request.url();
-    const own = url.startsWith(server.address) || /^(blob|data):/.test(url);
-    if (!own) strangers.push(url);
+    if (!isOwn(request.url())) strangers.push(request.url());
   });
+  page.on('websocket', (socket) => strangers.push(socket.url()));
   await page.goto(server.address);
   return {
     page,
@@ -57,23 +59,62 @@ export async function openApp(browser: Browser, look: Look = {}): Promise<OpenAp
   };
 }
 
+/** Collects what goes wrong in a page from before its first script on. */
+async function listen(page: Page, address: string): Promise<readonly string[]> {
+  const problems: string[] = [];
+  page.on('console', (message) => {
+    if (message.type() === 'error') problems.push(`console: ${message.text()}`);
+  });
+  page.on('pageerror', (error) => problems.push(`page: ${error.message}`));
+  page.on('crash', () => problems.push('page: crashed'));
+  page.on('response', (response) => {
+    if (response.status() >= 400) problems.push(`${response.status()}: ${response.url()}`);
+  });
+  page.on('requestfailed', (request) => {
+    // what another page or a test cut short is no fault of the app
+    const text = request.failure()?.errorText ?? '';
+    if (request.url().startsWith(address) && !/ABORTED/.test(text))
+      problems.push(`${text}: ${request.url()}`);
+  });
+  await page.exposeFunction('policyViolated', (what: string) => problems.push(`policy: ${what}`));
+  await page.addInitScript(() => {
+    document.addEventListener('securitypolicyviolation', (event) => {
+      const { policyViolated } = window as { policyViolated?: (what: string) => void };
+      policyViolated?.(`${event.effectiveDirective} ${event.blockedURI} ${event.sample}`);
+    });
+  });
+  return problems;
+}
+
 /** Drops real files on an element, through the devtools protocol, as the operating system would. */
 export async function dropFiles(
   page: Page,
   selector: string,
   files: readonly string[],
 ): Promise<void> {
-  await page.locator(selector).first().scrollIntoViewIfNeeded();
-  const box = await page.locator(selector).first().boundingBox();
-  if (!box) throw new Error(`there is nothing to drop on at ${selector}`);
+  const at = await page.locator(selector).first().evaluate(pointOn);
+  if (!at) throw new Error(`there is nothing to drop on at ${selector}, or something covers it`);
   const session = await page.context().newCDPSession(page);
-  // below the header, which stays in place
-  const at = { x: box.x + box.width / 2, y: Math.max(box.y + Math.min(box.height / 2, 40), 140) };
   const data = { items: [], files: [...files], dragOperationsMask: 1 };
   for (const type of ['dragEnter', 'dragOver', 'drop'] as const) {
     await session.send('Input.dispatchDragEvent', { type, ...at, data });
   }
   await session.detach();
+}
+
+/** A point of the window where an element is on top. Runs in the page, which it scrolls if it must. */
+function pointOn(element: Element): { x: number; y: number } | null {
+  element.scrollIntoView({ block: 'nearest', behavior: 'instant' });
+  const { left, top, width, height } = element.getBoundingClientRect();
+  const parts = [0.5, 0.3, 0.7, 0.1, 0.9, 0.02, 0.98];
+  for (const down of parts) {
+    for (const across of parts) {
+      const x = left + across * width;
+      const y = top + down * height;
+      if (element.contains(document.elementFromPoint(x, y))) return { x, y };
+    }
+  }
+  return null;
 }
 
 /** Clicks what starts a download and gives back its name and text. */
