@@ -1,13 +1,15 @@
 import { xMean, xMedian } from 'ml-spectra-processing';
 import { shiftSlope } from '../unmixing/unmix.ts';
 import type { DoubtTest, Evidence } from './evidence.ts';
-import { nmText, twoFigures } from './wording.ts';
+import { listText, nmText, percentText, twoFigures } from './wording.ts';
 
 /** Largest |z| of the scan that white noise passes in 1 of 100 spectra or so (NUMERICS.md, 6: 3.49), with a margin. */
 const limit = 3.8;
 /** Widths of the bands looked for, standard deviation in nm. */
 const widthsNm = [4, 8, 15, 25] as const;
 const smallestSample = 20;
+/** Smaller relative changes of an amount are not worth a word. */
+const shareOfNote = 0.01;
 const farInWidths = 4;
 const blockPoints = 8;
 const fewestBlocks = 8;
@@ -31,7 +33,7 @@ export const unexplainedBand: DoubtTest = (evidence) => {
       code: 'unexplained-band',
       message:
         `The residual holds a band near ${nmText(best.nm)} nm (about ${twoFigures(Math.abs(best.height) * 1000)} mAU ${over ? 'over' : 'under'} the fit, ${twoFigures(Math.abs(best.z))} times what noise would do): ` +
-        'something absorbs that has no standard here, or a standard differs from what is in the flask. A band of 2 % of the largest absorbance can move the mono : bis ratio by 3 to 6 %. ' +
+        `something absorbs that has no standard here, or a standard differs from what is in the flask. ${effectText(evidence, best)} ` +
         'Add the species if you know it (a by-product, the solvent), exclude that range, or look for it by chromatography.',
       atNm: [Math.max(low, best.lowest), Math.min(high, best.highest)],
     },
@@ -46,6 +48,29 @@ export interface Band {
   readonly height: number;
   readonly lowest: number;
   readonly highest: number;
+}
+
+/** What a band of that place, width and height does to the amounts: the fit's own gain on it. */
+function effectText({ crude, unmixing, nameOf }: Evidence, band: Band): string {
+  const { at, fit, amounts, species } = unmixing;
+  const moved = species.flatMap((id, k) => {
+    const gain = fit.gain[k];
+    const amount = amounts[k] ?? 0;
+    if (!gain || !(amount > 0)) return [];
+    let bias = 0;
+    for (const [j, i] of at.entries()) {
+      const distance = ((crude.wavelengthNm[i] ?? 0) - band.nm) / band.widthNm;
+      bias += gain[j]! * band.height * Math.exp(-0.5 * distance * distance);
+    }
+    const share = bias / amount;
+    if (Math.abs(share) < shareOfNote) return [];
+    return [
+      `${nameOf(id)} ${share > 0 ? 'too high' : 'too low'} by some ${percentText(Math.abs(share))}`,
+    ];
+  });
+  return moved.length === 0
+    ? 'A band of this kind hardly moves the amounts, but another part of the same species may.'
+    : `A band of this kind makes ${listText(moved)}; what else the species absorbs comes on top, so the interval does not hold.`;
 }
 
 /** What interpolation and rounding can leave behind moves no answer: a thousandth of the signal, four times the noise, or 0.1 mAU. */

@@ -116,7 +116,8 @@ function Edge(props: EdgeProps) {
         const wanted = keyTarget(event.key, event.shiftKey, nm, [least, most]);
         if (wanted === null) return;
         event.preventDefault();
-        begin();
+        // a key held down is one change, as a drag is
+        if (!event.repeat) begin();
         move(allowed(wanted));
       }}
     >

@@ -22,7 +22,7 @@ export function AliquotPicker({
         aria-label="Previous aliquot"
         onClick={() => step(-1)}
       >
-        ←
+        Previous
       </button>
       <Choice
         label="Aliquot shown"
@@ -40,7 +40,7 @@ export function AliquotPicker({
         aria-label="Next aliquot"
         onClick={() => step(1)}
       >
-        →
+        Next
       </button>
     </div>
   );
