@@ -21,6 +21,8 @@ export default defineConfig({
           testTimeout: 120_000,
           hookTimeout: 180_000,
           fileParallelism: false,
+          // a loaded machine takes its time over a plot
+          expect: { poll: { timeout: 20_000 } },
         },
       },
     ],

@@ -17,6 +17,11 @@ const id = v.pipe(
   v.string('must be a text'),
   v.nonEmpty('must not be empty'),
   v.maxLength(200, 'must not be longer than 200 characters'),
+  // a record keyed by ids would lose these in silence
+  v.check(
+    (text) => !['__proto__', 'constructor', 'prototype'].includes(text),
+    'must not be a word that JavaScript keeps for itself',
+  ),
 );
 const text = v.pipe(v.string('must be a text'), v.maxLength(20_000, 'is too long'));
 const rangeNm = v.pipe(

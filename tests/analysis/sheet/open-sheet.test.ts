@@ -109,6 +109,7 @@ describe('opening a sheet', () => {
     ],
     [{ runs: [{ id: 'r', chargedMol: { nobody: 1 } }] }, 'unknown-reference'],
     [{ fit: { windowNm: [400, 300] } }, 'sheet-invalid'],
+    [{ runs: [{ id: 'constructor' }] }, 'sheet-invalid'],
     [{ fit: { baseline: 'curly' } }, 'sheet-invalid'],
     [
       { stocks: [{ id: 's', species: 'bis' }], standards: [{ ...standard, stock: 's' }] },
