@@ -23,17 +23,26 @@ function plotly(): Promise<Plotly> {
   return loading;
 }
 
+/** What is being drawn into each element: drawing and clearing take turns, plotly cannot do both at once. */
+const turns = new WeakMap<HTMLElement, Promise<unknown>>();
+
 /** Draws, or draws anew; arrays must be new ones where they changed. */
-export async function draw(
+export function draw(
   element: HTMLElement,
   data: Data[],
   layout: Partial<Layout>,
 ): Promise<PlotlyHTMLElement> {
-  return (await plotly()).react(element, data, layout, plotConfig);
+  const react = async () => (await plotly()).react(element, data, layout, plotConfig);
+  const turn = (turns.get(element) ?? Promise.resolve()).then(react, react);
+  turns.set(element, turn);
+  return turn;
 }
 
-export async function clear(element: HTMLElement): Promise<void> {
-  if (loading) (await loading).purge(element);
+export function clear(element: HTMLElement): Promise<void> {
+  const purge = async () => (loading ? (await loading).purge(element) : undefined);
+  const turn = (turns.get(element) ?? Promise.resolve()).then(purge, purge);
+  turns.set(element, turn);
+  return turn;
 }
 
 /** A plot of so many px as the address of a picture. */
