@@ -16,7 +16,9 @@ export default defineConfig({
     emptyOutDir: true,
     assetsInlineLimit: 0,
     modulePreload: { polyfill: false },
-    target: 'chrome130',
+    // Electron's own, and the browsers it falls back to
+    target: ['chrome120', 'firefox121', 'safari17.4'],
+    sourcemap: false,
     // nearly all of it is plotly, loaded after first paint
     chunkSizeWarningLimit: 6000,
   },

@@ -8,7 +8,7 @@ import type { Answer } from './channels.ts';
 export const appOrigin = 'monobis://app';
 
 const name = v.pipe(v.string(), v.minLength(1), v.maxLength(200));
-const text = v.pipe(v.string(), v.maxLength(512 * 1024 * 1024));
+const text = v.string();
 
 /** What each channel takes; anything else is not acted on. */
 export const argumentsOf = {
@@ -69,14 +69,25 @@ const notAllowed: RefusalText = {
 /** No navigation away, no new windows, no embedded pages. */
 export function guardContents(contents: WebContents): void {
   contents.on('will-navigate', (event) => event.preventDefault());
+  contents.on('will-frame-navigate', (event) => event.preventDefault());
   contents.on('will-redirect', (event) => event.preventDefault());
   contents.on('will-attach-webview', (event) => event.preventDefault());
   contents.setWindowOpenHandler(() => ({ action: 'deny' }));
 }
 
-/** No permission is ever needed: all are denied, asked for or checked. */
+/**
+ * All permissions are denied, asked for or checked, but one: our own page may put text on the
+ * clipboard, which its Copy buttons do. Nothing is downloaded: what is written goes by a channel.
+ */
 export function guardSession(session: Session): void {
-  session.setPermissionRequestHandler((_contents, _permission, decide) => decide(false));
-  session.setPermissionCheckHandler(() => false);
+  const isGranted = (permission: string, url: string): boolean =>
+    permission === 'clipboard-sanitized-write' && originOf(url) === appOrigin;
+  session.setPermissionRequestHandler((_contents, permission, decide, details) =>
+    decide(details.isMainFrame && isGranted(permission, details.requestingUrl)),
+  );
+  session.setPermissionCheckHandler((_contents, permission, origin, details) =>
+    Boolean(details.isMainFrame && isGranted(permission, origin)),
+  );
   session.setDevicePermissionHandler(() => false);
+  session.on('will-download', (event) => event.preventDefault());
 }

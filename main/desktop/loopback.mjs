@@ -35,13 +35,21 @@ export async function serveLoopback({ folder, port = 0 }) {
 
 async function answer(folder, port, request, response) {
   const refuse = (status, text) => {
-    response.writeHead(status, { 'Content-Type': 'text/plain; charset=utf-8' });
+    response.writeHead(status, {
+      ...headersFor(''),
+      'Content-Type': 'text/plain; charset=utf-8',
+    });
     response.end(`${text}\n`);
   };
-  const hosts = [`127.0.0.1:${port}`, `localhost:${port}`];
+  const names = ['127.0.0.1', 'localhost'];
+  // a browser leaves out the port that is http's own
+  const hosts = port === 80 ? names : names.map((name) => `${name}:${port}`);
   if (!hosts.includes(request.headers.host))
     return refuse(421, 'Not the host that is served here.');
-  if (request.method !== 'GET' && request.method !== 'HEAD') return refuse(405, 'Only GET.');
+  if (request.method !== 'GET' && request.method !== 'HEAD') {
+    response.setHeader('Allow', 'GET, HEAD');
+    return refuse(405, 'Only GET and HEAD.');
+  }
   const [urlPath] = request.url.split(/[?#]/);
   const file = await builtFile(folder, urlPath);
   if (file === null) return refuse(404, 'No such file.');

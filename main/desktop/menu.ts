@@ -75,6 +75,7 @@ export function menuTemplate(
         { role: 'togglefullscreen' },
       ],
     },
+    ...(mac ? [{ role: 'windowMenu' } satisfies MenuItemConstructorOptions] : []),
     ...(mac ? [] : [{ label: '&Help', submenu: [aboutItem] } satisfies MenuItemConstructorOptions]),
   ];
 }

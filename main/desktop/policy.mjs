@@ -15,7 +15,7 @@ export const contentSecurityPolicy = [
   "frame-ancestors 'none'",
 ].join('; ');
 
-export const contentTypes = {
+const contentTypes = {
   '.html': 'text/html; charset=utf-8',
   '.js': 'text/javascript; charset=utf-8',
   '.css': 'text/css; charset=utf-8',

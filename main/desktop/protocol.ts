@@ -6,10 +6,16 @@ import { headersFor } from './policy.mjs';
 
 export const scheme = 'monobis';
 
+/** Where a report is printed from: never the origin of the app. */
+export const reportOrigin = `${scheme}://report`;
+
 /** Before the app is ready: our scheme is a secure, standard origin with fetch and workers. */
 export function registerScheme(protocol: Pick<Protocol, 'registerSchemesAsPrivileged'>): void {
   protocol.registerSchemesAsPrivileged([
-    { scheme, privileges: { standard: true, secure: true, supportFetchAPI: true } },
+    {
+      scheme,
+      privileges: { standard: true, secure: true, supportFetchAPI: true, codeCache: true },
+    },
   ]);
 }
 

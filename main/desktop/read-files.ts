@@ -1,18 +1,38 @@
-import { readFile, realpath, stat } from 'node:fs/promises';
+import { open, realpath, stat } from 'node:fs/promises';
 import path from 'node:path';
 import { filesOf, openSheet, Refusal } from '../../analysis/index.ts';
 import type { OpenedFile, OpenedSheet } from './channels.ts';
 import type { Places } from './places.ts';
 
-const largestSheet = 512 * 1024 * 1024;
+/** Bytes; just below what one string of the JavaScript engine can hold. */
+export const largestSheet = 500 * 1024 * 1024;
 /** Past this an export is refused by the importer anyway; its first bytes are enough to say so. */
 const largestExport = 64 * 1024 * 1024 + 1;
+/** Of all exports that are opened together, in bytes. */
+const largestLoad = 1024 * 1024 * 1024;
 
-/** Reads exports that a dialog named. One that is too large crosses as its first bytes and is refused there. */
-export function readExports(paths: readonly string[]): Promise<OpenedFile[]> {
-  return Promise.all(
-    paths.map(async (file) => ({ name: path.basename(file), bytes: await bytesOf(file) })),
-  );
+/**
+ * Reads exports that a dialog named: all, or none where one cannot be read. One that is too large
+ * crosses as its first bytes and is refused there.
+ */
+export async function readExports(paths: readonly string[]): Promise<OpenedFile[]> {
+  const files: OpenedFile[] = [];
+  let load = 0;
+  for (const file of paths) {
+    const bytes = await firstBytes(file, largestExport);
+    load += typeof bytes === 'string' ? 0 : bytes.length;
+    const why = load > largestLoad ? 'Together with those before it, it is too much at once.' : '';
+    if (typeof bytes === 'string' || why) {
+      throw new Refusal({
+        code: 'cannot-read',
+        message: `${why || bytes} No file was taken in.`,
+        where: { file: path.basename(file) },
+        mend: why ? 'Choose fewer files at a time.' : 'Leave it out, or make it readable.',
+      });
+    }
+    files.push({ name: path.basename(file), bytes });
+  }
+  return files;
 }
 
 /**
@@ -23,19 +43,25 @@ export async function readSheet(file: string, places: Places): Promise<OpenedShe
   const text = await sheetTextOf(file);
   const files: OpenedFile[] = [];
   const missing: { path: string; why: string }[] = [];
+  let load = 0;
   for (const name of namedFiles(text)) {
     const found = await within(path.dirname(file), name);
-    if (typeof found === 'string') files.push({ name, bytes: await bytesOf(found) });
-    else missing.push({ path: name, why: found.why });
+    const bytes = 'real' in found ? await firstBytes(found.real, largestExport) : found.why;
+    if (typeof bytes === 'string') missing.push({ path: name, why: bytes });
+    else if (load + bytes.length > largestLoad)
+      missing.push({ path: name, why: 'The files of this sheet are too much at once.' });
+    else {
+      files.push({ name, bytes });
+      load += bytes.length;
+    }
   }
   return { name: path.basename(file), handle: places.handleOf(file), text, files, missing };
 }
 
 async function sheetTextOf(file: string): Promise<string> {
-  const found = await stat(file).catch(() => null);
-  if (!found?.isFile()) throw unreadable(file, 'There is no such file.');
-  if (found.size > largestSheet) throw unreadable(file, 'The file is larger than any sheet.');
-  const bytes = await readFile(file);
+  const bytes = await firstBytes(file, largestSheet + 1);
+  if (typeof bytes === 'string') throw unreadable(file, bytes);
+  if (bytes.length > largestSheet) throw unreadable(file, 'The file is larger than any sheet.');
   try {
     return new TextDecoder('utf-8', { fatal: true }).decode(bytes);
   } catch {
@@ -62,21 +88,47 @@ function namedFiles(text: string): readonly string[] {
   }
 }
 
-async function within(folder: string, name: string): Promise<string | { readonly why: string }> {
+async function within(
+  folder: string,
+  name: string,
+): Promise<{ readonly real: string } | { readonly why: string }> {
   if (path.isAbsolute(name)) return { why: 'It is not a path relative to the sheet.' };
   try {
     const [root, real] = await Promise.all([realpath(folder), realpath(path.join(folder, name))]);
-    if (!real.startsWith(root + path.sep))
-      return { why: 'It lies outside the folder of the sheet.' };
-    return (await stat(real)).isFile() ? real : { why: 'It is not a file.' };
-  } catch {
-    return { why: 'There is no such file.' };
+    const below = path.relative(root, real);
+    const isInside = !/^([.][.]$|[.][.][/\\]|$)/.test(below) && !path.isAbsolute(below);
+    return isInside ? { real } : { why: 'It lies outside the folder of the sheet.' };
+  } catch (error) {
+    return { why: whyUnread(error) };
   }
 }
 
-async function bytesOf(file: string): Promise<Uint8Array> {
-  const { size } = await stat(file);
-  // only its length matters then
-  if (size > largestExport) return new Uint8Array(largestExport);
-  return new Uint8Array(await readFile(file));
+/** At most `limit` bytes of a file, or in words why it cannot be read. */
+async function firstBytes(file: string, limit: number): Promise<Uint8Array | string> {
+  try {
+    // before it is opened: opening a pipe would wait for its other end
+    if (!(await stat(file)).isFile()) return 'It is not a file.';
+    const handle = await open(file);
+    try {
+      const bytes = new Uint8Array(Math.min((await handle.stat()).size, limit));
+      let length = 0;
+      for (let read = -1; read !== 0 && length < bytes.length; length += read) {
+        read = (await handle.read(bytes, length)).bytesRead;
+      }
+      return bytes.subarray(0, length);
+    } finally {
+      await handle.close();
+    }
+  } catch (error) {
+    return whyUnread(error);
+  }
+}
+
+function whyUnread(error: unknown): string {
+  const code = error instanceof Error && 'code' in error ? String(error.code) : '';
+  if (code === 'ENOENT' || code === 'ENOTDIR') return 'There is no such file.';
+  if (code === 'EACCES' || code === 'EPERM') return 'You may not read it.';
+  if (code === 'EBUSY') return 'Another program holds it.';
+  if (code === '') throw error;
+  return `It cannot be read (${code}).`;
 }

@@ -25,21 +25,23 @@ function existing(file) {
 }
 
 /**
- * Lets Electron's own script fetch its runtime, once and for a limited time. Resolves to whether it
- * is there now.
+ * Lets Electron's own script fetch its runtime, once and for a limited time; what came of it is for
+ * `electronRuntime` to see.
  *
  * @param {string} root of the project
- * @param {number} limitMs after which it is given up
+ * @param {{ limitMs: number, stop?: AbortSignal }} until it is given up
  */
-export async function fetchRuntime(root, limitMs) {
+export async function fetchRuntime(root, { limitMs, stop }) {
   const script = path.join(root, 'node_modules/electron/install.js');
-  if (!existsSync(script)) return false;
-  const child = spawn(process.execPath, [script], { cwd: root, stdio: 'ignore' });
-  const timer = setTimeout(() => child.kill(), limitMs);
+  if (!existsSync(script)) return;
+  const limit = AbortSignal.timeout(limitMs);
+  const child = spawn(process.execPath, [script], {
+    cwd: root,
+    stdio: 'ignore',
+    signal: stop ? AbortSignal.any([stop, limit]) : limit,
+  });
   await new Promise((resolve) => {
     child.once('exit', resolve);
     child.once('error', resolve);
   });
-  clearTimeout(timer);
-  return electronRuntime(root) !== null;
 }
