@@ -15,6 +15,8 @@ export default defineConfig({
     outDir: path.join(root, 'dist/renderer'),
     emptyOutDir: true,
     assetsInlineLimit: 0,
+    // a note on how long copying the sample took is no news to who starts the app
+    rolldownOptions: { checks: { pluginTimings: false } },
     modulePreload: { polyfill: false },
     // Electron's own, and the browsers it falls back to
     target: ['chrome120', 'firefox121', 'safari17.4'],
