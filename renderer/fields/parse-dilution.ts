@@ -1,5 +1,5 @@
 import type { SheetDilution } from '../../analysis/index.ts';
-import { parseNumber, shown } from './parse-entry.ts';
+import { type Entry, parseNumber, shown } from './parse-entry.ts';
 
 export type DilutionEntry =
   | { readonly ok: true; readonly value: Pick<SheetDilution, 'factor' | 'steps'> | undefined }
@@ -12,6 +12,8 @@ export function parseDilution(text: string): DilutionEntry {
   const trimmed = text.trim();
   if (trimmed === '') return { ok: true, value: undefined };
   if (/→|->|>/.test(trimmed)) return parseSteps(trimmed);
+  const unclear = twofold(trimmed.split(':'));
+  if (unclear !== null) return { ok: false, message: unclear };
   const ratio = /^(.+?)\s*:\s*(.+)$/.exec(trimmed);
   const [one, many] = ratio ? [number(ratio[1]), number(ratio[2])] : [1, number(trimmed)];
   if (one === null || many === null || !(one > 0)) return { ok: false, message: hint };
@@ -24,7 +26,10 @@ export function parseDilution(text: string): DilutionEntry {
 function parseSteps(text: string): DilutionEntry {
   const steps: { takeMl: number; toMl: number }[] = [];
   for (const part of text.split(/;|,?\s*\bthen\b/i)) {
-    const [take, to, ...more] = part.split(/→|-?>/).map(number);
+    const volumes = part.split(/→|-?>/);
+    const unclear = twofold(volumes);
+    if (unclear !== null) return { ok: false, message: unclear };
+    const [take, to, ...more] = volumes.map(number);
     if (typeof take !== 'number' || typeof to !== 'number' || more.length > 0) {
       return { ok: false, message: hint };
     }
@@ -37,8 +42,21 @@ function parseSteps(text: string): DilutionEntry {
 }
 
 function number(text: string | undefined): number | null {
-  const entry = parseNumber((text ?? '').replace(/ml\s*$/i, ''));
+  const entry = entryOf(text ?? '');
   return entry.ok ? (entry.value ?? null) : null;
+}
+
+function entryOf(text: string): Entry {
+  return parseNumber(text.replace(/ml\s*$/i, ''));
+}
+
+/** What is wrong with the first of the numbers that is one, but can be read in two ways. */
+function twofold(texts: readonly string[]): string | null {
+  for (const text of texts) {
+    const entry = entryOf(text);
+    if (!entry.ok && entry.isTwofold === true) return entry.message;
+  }
+  return null;
 }
 
 /**

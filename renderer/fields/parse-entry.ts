@@ -1,7 +1,12 @@
 /** What a user types into a field, as a number in the sheet's unit, or why it cannot be one. */
 export type Entry =
   | { readonly ok: true; readonly value: number | undefined }
-  | { readonly ok: false; readonly message: string };
+  | {
+      readonly ok: false;
+      readonly message: string;
+      /** True for a number whose comma may stand for thousands as well as for decimals. */
+      readonly isTwofold?: boolean;
+    };
 
 const nothing: Entry = { ok: true, value: undefined };
 
@@ -12,6 +17,15 @@ export function parseNumber(text: string): Entry {
     .replace('\u2212', '-')
     .replace(/[\s\u2009\u00a0]/g, '');
   if (trimmed === '') return nothing;
+  const [, whole, thousandths] = /^[+-]?([1-9]\d{0,2}),(\d{3})$/.exec(trimmed) ?? [];
+  if (whole !== undefined && thousandths !== undefined) {
+    // a factor of 2,000 read as 2 would be wrong a thousandfold and look right
+    return {
+      ok: false,
+      isTwofold: true,
+      message: `"${text.trim()}" can be read in two ways; type ${whole}${thousandths} or ${whole}.${thousandths}.`,
+    };
+  }
   const pointed = /^[^.]*,[^.,]*$/.test(trimmed) ? trimmed.replace(',', '.') : trimmed;
   const value = /^[+-]?(\d+\.?\d*|\.\d+)(e[+-]?\d+)?$/i.test(pointed)
     ? Number(pointed)
@@ -64,8 +78,10 @@ const concentrationUnits: Readonly<Record<string, number>> = {
   'µmol/l': 1e-6,
   'μmol/L': 1e-6,
   'umol/L': 1e-6,
+  'umol/l': 1e-6,
   nM: 1e-9,
   'nmol/L': 1e-9,
+  'nmol/l': 1e-9,
 };
 
 /** "25 µM", "2.5e-5 M", "0,025 mmol/L"; a bare number is in µmol/L, as the column says. In mol/L. */

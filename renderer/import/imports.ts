@@ -11,7 +11,7 @@ import {
 } from '../../analysis/index.ts';
 import type { OpenedFile } from '../../main/desktop/channels.ts';
 import { notify } from '../state/notices.ts';
-import { change, sheet } from '../state/store.ts';
+import { change, sheet, sheetsShown } from '../state/store.ts';
 import { readFileBytes } from '../worker/analysis-client.ts';
 
 /** Where spectra are to go. */
@@ -28,13 +28,25 @@ export function cancelReading(): void {
   isCancelled = true;
 }
 
-/** Reads exports and puts their traces where they were dropped, or asks. Nothing vanishes in silence. */
+/**
+ * Reads exports and puts their traces where they were dropped, or asks. Nothing vanishes in silence.
+ * `shown` is the count of `sheetsShown` when they were given: they are for that sheet and no later one.
+ */
 export async function addExports(
   files: readonly OpenedFile[],
   destination: Destination | null,
+  shown = sheetsShown.peek(),
 ): Promise<void> {
   if (files.length === 0) return;
   const readings = await readAll(files);
+  if (shown !== sheetsShown.peek()) {
+    notify(
+      'refusal',
+      'Another sheet was opened while these were read; nothing of them was taken in. Drop them again where they belong:',
+      files.map(({ name }) => name),
+    );
+    return;
+  }
   const spectra = readings.flatMap((each) =>
     each.spectra.flatMap(({ trace }, index) => embeddedFrom(each, trace ?? index) ?? []),
   );

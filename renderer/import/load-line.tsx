@@ -1,5 +1,6 @@
 import { platform } from '../platform/this-platform.ts';
 import { attempt } from '../state/notices.ts';
+import { sheetsShown } from '../state/store.ts';
 import { addExports, type Destination } from './imports.ts';
 
 interface LoadLineProps {
@@ -17,7 +18,10 @@ export function LoadLine({ destination, what }: LoadLineProps) {
         type="button"
         class="quiet inline"
         onClick={() =>
-          void attempt(async () => addExports(await platform.openExports(), destination))
+          void attempt(async () => {
+            const shown = sheetsShown.peek();
+            await addExports(await platform.openExports(), destination, shown);
+          })
         }
       >
         choose files

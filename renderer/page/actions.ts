@@ -11,7 +11,7 @@ import {
   sheetText,
 } from '../../analysis/index.ts';
 import type { MenuCommand, OpenedFile } from '../../main/desktop/channels.ts';
-import { addExports } from '../import/imports.ts';
+import { addExports, type Destination } from '../import/imports.ts';
 import type { SheetSource } from '../platform/platform.ts';
 import { platform } from '../platform/this-platform.ts';
 import { attempt, mention, notify, tellRefusal } from '../state/notices.ts';
@@ -25,6 +25,7 @@ import {
   replaceSheet,
   saveHandle,
   sheet,
+  sheetsShown,
   undo,
 } from '../state/store.ts';
 import { readFileBytes, reportTexts } from '../worker/analysis-client.ts';
@@ -33,7 +34,7 @@ import { confirmLoss } from './confirm-loss.ts';
 import { sampleSource } from './sample.ts';
 
 /** What the buttons, the keys and the native menu do. */
-export const actions: Record<MenuCommand, () => Promise<void>> = {
+export const actions: Record<MenuCommand, () => Promise<unknown>> = {
   'new-sheet': () =>
     replacing(async () => replaceSheet(newSheet(), { name: null, handle: null, isSaved: true })),
   'open-sheet': () =>
@@ -42,7 +43,10 @@ export const actions: Record<MenuCommand, () => Promise<void>> = {
       if (source) await openSource(source);
     }),
   'open-sample': () => replacing(async () => openSource(await sampleSource())),
-  'add-exports': async () => addExports(await takeAwaited(await platform.openExports()), null),
+  'add-exports': async () => {
+    const shown = sheetsShown.peek();
+    await takeIn(await platform.openExports(), null, shown);
+  },
   save: () => save(saveHandle.value),
   'save-as': () => save(null),
   'export-csv': () => exported('csv'),
@@ -70,8 +74,8 @@ export function run(command: MenuCommand): void {
   void attempt(actions[command]);
 }
 
-/** Opens a sheet in place of the one on the page, which may have to be let go first. */
-export const openInstead = (source: SheetSource): Promise<void> =>
+/** Opens a sheet in place of the one on the page; false if that one was not let go. */
+export const openInstead = (source: SheetSource): Promise<boolean> =>
   replacing(() => openSource(source));
 
 /** Opens a sheet with the exports that came with it; the page asks for those that did not. */
@@ -95,11 +99,23 @@ async function openSource(source: SheetSource): Promise<void> {
   }
 }
 
+/** Takes in files that were given while the sheet of this count of `sheetsShown` was on the page. */
+export async function takeIn(
+  files: readonly OpenedFile[],
+  destination: Destination | null,
+  shown: number,
+): Promise<void> {
+  const rest = shown === sheetsShown.peek() ? await takeAwaited(files) : files;
+  await addExports(rest, destination, shown);
+}
+
 /** Takes in files that the open sheet waits for, by their names; gives back those it does not. */
-export async function takeAwaited(files: readonly OpenedFile[]): Promise<readonly OpenedFile[]> {
+async function takeAwaited(files: readonly OpenedFile[]): Promise<readonly OpenedFile[]> {
   const { found, ambiguous, rest } = matchAwaited(awaited.value, files);
+  const shown = sheetsShown.peek();
   const readings = await readNamed(sheet.value, [...found.keys()], found);
-  if (readings.size > 0) {
+  // the files of one sheet are nothing to the next, whatever names they share
+  if (readings.size > 0 && shown === sheetsShown.peek()) {
     change('take in files', (before) =>
       embedSpectra(before, (file, trace) => {
         const reading = readings.get(file);
@@ -138,16 +154,19 @@ function tellRefused(readings: ReadonlyMap<string, Reading>): void {
   if (refused.length > 0) notify('refusal', 'Files of the sheet could not be used:', refused);
 }
 
-async function replacing(work: () => Promise<void>): Promise<void> {
-  if (isUnsaved.value && !(await confirmLoss())) return;
+async function replacing(work: () => Promise<void>): Promise<boolean> {
+  if (isUnsaved.value && !(await confirmLoss())) return false;
   await work();
+  return true;
 }
 
 async function save(handle: unknown): Promise<void> {
   const written = present();
+  const shown = sheetsShown.peek();
   const saved = await platform.saveSheet(sheetText(written), handle, `${baseName()}.sheet.json`);
   if (!saved) return;
-  markSaved(written, saved.name, saved.handle);
+  // another sheet may have come meanwhile: its saves must not go into this one's file
+  if (shown === sheetsShown.peek()) markSaved(written, saved.name, saved.handle);
   mention(`Saved as ${saved.name}.`);
 }
 

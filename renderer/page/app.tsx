@@ -59,7 +59,7 @@ function Sections() {
     chooseAliquot,
   };
   const hasAnswer = props.quantification !== null;
-  const needsFit = hasAnswer ? null : 'standards and a crude spectrum';
+  const needsFit = hasAnswer ? null : fitNeeds(props);
   return (
     <>
       <SheetTitle />
@@ -109,6 +109,13 @@ function Sections() {
         )}
     </>
   );
+}
+
+/** What stands between the sheet and its first fit; null where only its own reason does. */
+function fitNeeds(props: SectionProps): string | null {
+  const { standards = [], aliquots = [] } = props.sheet;
+  if (standards.length === 0 || aliquots.length === 0) return 'standards and a crude spectrum';
+  return standardsNeeds(props);
 }
 
 /** Files that the sheet names and that are not in it. */

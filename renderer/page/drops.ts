@@ -1,9 +1,9 @@
 import { signal } from '@preact/signals';
-import { addExports, type Destination } from '../import/imports.ts';
+import type { Destination } from '../import/imports.ts';
 import { openedAll, sheetSource } from '../platform/browser.ts';
 import { attempt, notify } from '../state/notices.ts';
-import { isOpen } from '../state/store.ts';
-import { actions, openInstead, takeAwaited } from './actions.ts';
+import { isOpen, sheetsShown } from '../state/store.ts';
+import { actions, openInstead, takeIn } from './actions.ts';
 
 /** True while files hang over the page. */
 export const isDragging = signal(false);
@@ -37,8 +37,18 @@ async function dropped(files: readonly File[], destination: Destination | null):
   const sheetFile = files.find(({ name }) => name.toLowerCase().endsWith('.json'));
   const rest = files.filter((file) => file !== sheetFile);
   if (sheetFile) {
-    await openInstead(await sheetSource(sheetFile));
+    if (!(await openInstead(await sheetSource(sheetFile)))) {
+      // what came with a sheet that was not wanted does not belong in the one that stays
+      if (rest.length > 0)
+        notify(
+          'news',
+          'The sheet was not opened, and the files dropped with it were left out:',
+          rest.map(({ name }) => name),
+        );
+      return;
+    }
   } else if (!isOpen.value) await actions['new-sheet']();
+  const shown = sheetsShown.peek();
   const { files: exports, unreadable } = await openedAll(rest);
   if (unreadable.length > 0) {
     notify(
@@ -47,5 +57,5 @@ async function dropped(files: readonly File[], destination: Destination | null):
       unreadable,
     );
   }
-  await addExports(await takeAwaited(exports), destination);
+  await takeIn(exports, destination, shown);
 }

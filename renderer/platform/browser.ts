@@ -178,9 +178,11 @@ function printPage(html: string): void {
       mend: 'Allow windows for this page, or export the report as HTML and print that.',
     });
   }
-  const report = new DOMParser().parseFromString(html, 'text/html');
+  // taken out before parsing: even a document that is never shown may hold no style element
+  const inlineStyle = /<style>([\s\S]*?)<\/style>/;
+  const report = new DOMParser().parseFromString(html.replace(inlineStyle, ''), 'text/html');
   const style = new (page as Window & typeof globalThis).CSSStyleSheet();
-  style.replaceSync(report.querySelector('style')?.textContent ?? '');
+  style.replaceSync(inlineStyle.exec(html)?.[1] ?? '');
   page.document.adoptedStyleSheets = [style];
   page.document.title = report.title;
   page.document.body.replaceWith(page.document.importNode(report.body, true));

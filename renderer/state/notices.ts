@@ -51,7 +51,7 @@ export function tellRefusal(refusal: RefusalText): void {
 }
 
 /** Runs what a user asked for; a refusal is told in its words, anything else as a fault of ours. */
-export async function attempt(work: () => Promise<void> | void): Promise<void> {
+export async function attempt(work: () => unknown): Promise<void> {
   try {
     await work();
   } catch (error) {

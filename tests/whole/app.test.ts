@@ -239,6 +239,45 @@ describe('files', () => {
     expectQuiet(app!);
   });
 
+  it('a save that ends after another sheet was opened does not lend that one its file', async () => {
+    const { page } = await opened();
+    await openTheSample(page);
+    await page.evaluate(() => {
+      const taken = { name: 'first.sheet.json', ends: () => {} };
+      const close = () =>
+        new Promise<void>((resolve) => {
+          taken.ends = resolve;
+        });
+      const createWritable = async () => ({ write: async () => {}, close });
+      const showSaveFilePicker = async () => ({ name: taken.name, createWritable });
+      Object.assign(window, { showSaveFilePicker, endTheSave: () => taken.ends() });
+    });
+    await page.getByRole('button', { name: 'Save', exact: true }).click();
+    await page.getByRole('button', { name: 'New sheet' }).click();
+    await page.getByText('not saved yet').waitFor();
+    await page.evaluate(() => (window as { endTheSave?: () => void }).endTheSave?.());
+    await page.getByText('Saved as first.sheet.json.').waitFor();
+    expect(await page.locator('.page-title').textContent()).toContain('not saved yet');
+    expectQuiet(app!);
+  });
+
+  it('the report opens to be printed, in its own style, with nothing the policy forbids', async () => {
+    const { page, context } = await opened();
+    await context.addInitScript(() => {
+      window.print = () => {};
+    });
+    await openTheSample(page);
+    await page.getByRole('button', { name: 'Export', exact: true }).click();
+    const [report] = await Promise.all([
+      context.waitForEvent('page'),
+      page.getByRole('button', { name: 'Report to print or PDF' }).click(),
+    ]);
+    await report.getByText('Provenance').first().waitFor();
+    const rules = await report.evaluate(() => document.adoptedStyleSheets[0]?.cssRules.length ?? 0);
+    expect(rules).toBeGreaterThan(5);
+    expectQuiet(app!);
+  });
+
   it('says in words what is wrong with each strange file, and keeps the sheet', async () => {
     const strange: [string, Buffer | string, RegExp][] = [
       ['empty.csv', '', /empty/],

@@ -95,3 +95,24 @@ describe('what is typed into a field', () => {
     expect(parseRanges('about 300').ok).toBe(false);
   });
 });
+
+describe('a comma that may stand for thousands as well as for decimals', () => {
+  it.each(['2,000', '12,345', '-1,250'])('%s is not guessed: both readings are offered', (text) => {
+    const entry = parseNumber(text);
+    expect(entry.ok).toBe(false);
+    if (!entry.ok) expect(entry.message).toContain(text.replace(',', '').replace('-', ''));
+  });
+
+  it.each(['0,025', '2,0', '2,00', '2,0000', '1234,567'])('%s can only be a decimal', (text) => {
+    expect(parseNumber(text)).toEqual(good(Number(text.replace(',', '.'))));
+  });
+
+  it.each(['2,000', '1:2,000', '1 -> 1,000'])(
+    'a dilution of %s says why it is not taken',
+    (text) => {
+      const entry = parseDilution(text);
+      expect(entry.ok).toBe(false);
+      if (!entry.ok) expect(entry.message).toContain('two ways');
+    },
+  );
+});

@@ -2,7 +2,7 @@ import { beforeEach, describe, expect, it, vi } from 'vitest';
 import { newSheet, readExport, updateSpecies } from '../../../analysis/index.ts';
 import { addExports, leaveOut, likelySpecies, pending } from '../../../renderer/import/imports.ts';
 import { dismiss, notices } from '../../../renderer/state/notices.ts';
-import { replaceSheet, sheet, undo } from '../../../renderer/state/store.ts';
+import { replaceSheet, sheet, sheetsShown, undo } from '../../../renderer/state/store.ts';
 
 // no worker under Node: the same reading, in the same thread
 vi.mock('../../../renderer/worker/analysis-client.ts', () => ({
@@ -90,5 +90,21 @@ describe('the species of a standard', () => {
     await addExports([file('lamp.csv', table('lamp'))], 'standards');
     const guess = notices.value.find(({ text }) => text.includes('guessed'));
     expect(guess?.details?.[0]).toContain('nothing in its name says which');
+  });
+});
+
+describe('exports still being read when another sheet is opened', () => {
+  it('do not end up in it, and are named to be dropped again', async () => {
+    const next = { name: null, handle: null, isSaved: true };
+    const taken = addExports([file('late.csv', table('late'))], 'standards');
+    replaceSheet(newSheet(), next);
+    await taken;
+    // nor those that the browser still had to read before they came here
+    const shown = sheetsShown.peek();
+    replaceSheet(newSheet(), next);
+    await addExports([file('later.csv', table('later'))], 'standards', shown);
+    expect(sheet.value.standards ?? []).toEqual([]);
+    expect(notices.value.some(({ details = [] }) => details.includes('late.csv'))).toBe(true);
+    expect(notices.value.some(({ details = [] }) => details.includes('later.csv'))).toBe(true);
   });
 });
