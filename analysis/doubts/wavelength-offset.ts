@@ -1,4 +1,4 @@
-import { shiftSlope, standardsVariance } from '../unmixing/unmix.ts';
+import { shiftSlope, standardsVariance } from '../unmixing/standards-on-points.ts';
 import { weightedFit } from '../unmixing/weighted-fit.ts';
 import type { DoubtTest, Evidence } from './evidence.ts';
 import { strongestBand } from './unexplained-band.ts';
@@ -21,7 +21,7 @@ export const wavelengthOffset: DoubtTest = (evidence) => {
   if (!(Math.abs(shiftNm) > Math.max(limit * sd, smallestOfNote))) return [];
   // a missing species leans on the slope too: where a band explains more, it is the band
   const band = strongestBand(evidence);
-  if (band && Math.abs(band.z) > Math.abs(z)) return [];
+  if (band && Math.abs(band.againstNoise) > Math.abs(z)) return [];
   return [
     {
       code: 'wavelength-offset',

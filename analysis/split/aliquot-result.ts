@@ -3,7 +3,7 @@ import type { BaselineName } from '../unmixing/design.ts';
 import { commonCovariance, type ErrorSources, ownCovariance } from '../unmixing/error-sources.ts';
 import type { Unmixing } from '../unmixing/unmix.ts';
 import type { AmountEstimate } from './amounts.ts';
-import { studentFactor } from './confidence-set.ts';
+import { plainQuantile, studentFactor } from './confidence-set.ts';
 import type { ConcentrationResult, FitResult, Quantified } from './results.ts';
 
 /** The amounts of one aliquot with their uncertainty in its two parts. */
@@ -57,6 +57,6 @@ export function fitResult(unmixing: Unmixing, wavelengthNm: Float64Array): FitRe
 }
 
 function symmetric(value: number, sd: number, df: number): Quantified {
-  const half = studentFactor(df) * 1.959963984540054 * sd;
+  const half = studentFactor(df) * plainQuantile * sd;
   return { value, standardUncertainty: sd, interval95: [value - half, value + half] };
 }

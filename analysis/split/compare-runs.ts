@@ -2,7 +2,7 @@ import { normalQuantile } from '../distributions/normal.ts';
 import { studentTUpper } from '../distributions/student-t.ts';
 import type { AliquotEstimate } from './aliquot-estimate.ts';
 import { quadratic } from './amounts.ts';
-import { confidence, studentFactor } from './confidence-set.ts';
+import { plainQuantile, studentFactor } from './confidence-set.ts';
 import { type AliquotNumber, type PooledNumber, pooled, sumOfSquares } from './pooled.ts';
 import type { ComparisonResult, Quantified } from './results.ts';
 import { boundedFraction, pooledFraction, projected } from './runs.ts';
@@ -88,7 +88,7 @@ function byLogarithm(a: PooledNumber, b: PooledNumber): Measured {
   const difference = a.mean - b.mean;
   const { variance, df } = differenceVariance(a, b);
   const sd = Math.sqrt(variance);
-  const half = studentFactor(df) * normalQuantile((1 + confidence) / 2) * sd;
+  const half = studentFactor(df) * plainQuantile * sd;
   const ratio = Math.exp(difference);
   return {
     ratioOfRatios: {
@@ -113,8 +113,8 @@ function byFractions(a: PooledNumber, b: PooledNumber): Measured {
   const sd = Math.sqrt(variance);
   const wide = (number: PooledNumber) => {
     const clamped = Math.min(Math.max(number.mean, 0), 1);
-    // 97.74 % each in place of 95 %: √(1 + …) on the standard deviation does it for a normal
-    const factor = normalQuantile(1 - 0.025 / 2) / normalQuantile(0.975);
+    // 97.5 % each in place of 95 %: a standard deviation larger by the ratio of the quantiles
+    const factor = normalQuantile(1 - 0.025 / 2) / plainQuantile;
     return boundedFraction(
       {
         ...number,

@@ -34,11 +34,7 @@ export function concentrationsOf(
 function decisionLimit(estimate: AmountEstimate, k: number): number {
   const unit = unitVector(estimate, k);
   const { fixed } = variances(estimate, k, unit, 0);
-  const t =
-    estimate.df === Number.POSITIVE_INFINITY
-      ? 1.6448536269514722
-      : studentTQuantile(1 - falseDetection, estimate.df);
-  return t * Math.sqrt(fixed);
+  return studentTQuantile(1 - falseDetection, estimate.df) * Math.sqrt(fixed);
 }
 
 function scaled(estimate: AmountEstimate, k: number, dilution: DilutionFactor): Quantified {

@@ -5,7 +5,8 @@ import { acceptance } from './bounded-mean.ts';
 export const confidence = 0.95;
 /** From here on a bound no longer shows in the acceptance region (in standard deviations). */
 const farFromBound = 5;
-const plain = normalQuantile((1 + confidence) / 2);
+/** 97.5 % quantile of the normal. */
+export const plainQuantile = normalQuantile((1 + confidence) / 2);
 
 /** A parameter that is bounded below by 0 and, it may be, above, and the test of a supposed value. */
 export interface BoundedParameter {
@@ -65,7 +66,7 @@ function accepted({ departure, sd, upper, df }: BoundedParameter, value: number)
   const unit = sd(value) * widening;
   const mean = value / unit;
   const room = upper === Number.POSITIVE_INFINITY ? upper : (upper - value) / unit;
-  if (mean > farFromBound && room > farFromBound) return Math.abs(z) <= plain;
+  if (mean > farFromBound && room > farFromBound) return Math.abs(z) <= plainQuantile;
   const [low, high] = acceptance(mean, mean + room, confidence);
   return z >= low && z <= high;
 }
@@ -76,7 +77,7 @@ const studentFactors = new Map<number, number>();
 export function studentFactor(df: number): number {
   const known = studentFactors.get(df);
   if (known !== undefined) return known;
-  const factor = studentTQuantile((1 + confidence) / 2, df) / plain;
+  const factor = studentTQuantile((1 + confidence) / 2, df) / plainQuantile;
   studentFactors.set(df, factor);
   return factor;
 }

@@ -4,7 +4,8 @@ import type { Spectrum } from '../spectrum/spectrum.ts';
 import { molarAbsorptivityAt } from '../standards/molar-absorptivity.ts';
 import type { SpeciesStandard } from '../standards/species-standard.ts';
 import { baselineColumns } from '../unmixing/design.ts';
-import { standardsVariance, type Unmixing } from '../unmixing/unmix.ts';
+import { standardsVariance } from '../unmixing/standards-on-points.ts';
+import type { Unmixing } from '../unmixing/unmix.ts';
 import type { AliquotCurves, StandardCurves } from './results.ts';
 
 /** What to draw for one aliquot, on the crude's own points. */

@@ -10,6 +10,7 @@ import { choosePoints, pointUse, usedPoints } from './choose-points.ts';
 import { type BaselineName, type Design, designOf } from './design.ts';
 import { nonNegativeLeastSquares } from './non-negative.ts';
 import { fitShift, largestShiftNm } from './shift.ts';
+import { shiftSlope, standardsVariance } from './standards-on-points.ts';
 import { type WeightedFit, weightedFit } from './weighted-fit.ts';
 
 export interface UnmixInput {
@@ -170,35 +171,6 @@ function usableAtEveryShift(
       ? pointUse.noStandard
       : reason,
   );
-}
-
-/** b² Σ c² u²(ε): what the standards' noise adds to the variance of each point. */
-export function standardsVariance(
-  standards: readonly MolarAbsorptivity[],
-  at: Int32Array,
-  pathLengthCm: number,
-  parameters: Float64Array,
-): Float64Array {
-  const variance = new Float64Array(at.length);
-  for (const [k, { sd }] of standards.entries()) {
-    const amount = pathLengthCm * Math.max(parameters[k]!, 0);
-    for (const [j, i] of at.entries()) variance[j]! += (amount * sd[i]!) ** 2;
-  }
-  return variance;
-}
-
-/** ∂A/∂δ = -b Σ c dε/dλ on the fitted points, absorbance per nm. */
-export function shiftSlope(
-  standards: readonly MolarAbsorptivity[],
-  at: Int32Array,
-  pathLengthCm: number,
-  parameters: Float64Array,
-): Float64Array {
-  const column = new Float64Array(at.length);
-  for (const [k, { slope }] of standards.entries()) {
-    for (const [j, i] of at.entries()) column[j]! -= pathLengthCm * parameters[k]! * slope[i]!;
-  }
-  return column;
 }
 
 function firstNoise({ crude, settings }: UnmixInput): NoiseModel {

@@ -4,10 +4,11 @@ import {
   type SheetAliquot,
   updateAliquot,
 } from '../../../analysis/index.ts';
-import { committed } from '../../fields/committed.ts';
 import { Choice, Field } from '../../fields/field.tsx';
+import { NumberField } from '../../fields/number-field.tsx';
 import { keptDilution, parseDilution, shownDilution } from '../../fields/parse-dilution.ts';
 import { parsePathLength, parsePercent, shown } from '../../fields/parse-entry.ts';
+import { RemoveButton } from '../../fields/remove-button.tsx';
 import { LoadLine } from '../../import/load-line.tsx';
 import type { SectionProps } from '../section.ts';
 import { sourceName } from '../source-name.ts';
@@ -112,14 +113,12 @@ function AliquotRow({
         />
       </td>
       <td class="number">
-        <Field
+        <NumberField
           label={`Path length of ${id} in cm`}
-          align="right"
+          value={pathLengthCm}
           placeholder="1"
-          value={shown(pathLengthCm)}
-          commit={committed(parsePathLength, (value) =>
-            set('set path length', { pathLengthCm: value }),
-          )}
+          parse={parsePathLength}
+          take={(value) => set('set path length', { pathLengthCm: value })}
         />
       </td>
       <td class="number">
@@ -156,14 +155,10 @@ function AliquotRow({
         />
       </td>
       <td>
-        <button
-          type="button"
-          class="remove"
-          aria-label={`Remove aliquot ${id}`}
-          onClick={() => change(`remove aliquot ${id}`, (before) => removeAliquot(before, id))}
-        >
-          ×
-        </button>
+        <RemoveButton
+          what={`aliquot ${id}`}
+          remove={() => change(`remove aliquot ${id}`, (before) => removeAliquot(before, id))}
+        />
       </td>
     </tr>
   );

@@ -1,7 +1,8 @@
 import { removeRun, type SheetRun, speciesName, updateRun } from '../../../analysis/index.ts';
-import { committed } from '../../fields/committed.ts';
 import { Choice, Field } from '../../fields/field.tsx';
-import { parseNonNegative, parsePositive, shown } from '../../fields/parse-entry.ts';
+import { NumberField } from '../../fields/number-field.tsx';
+import { parseNonNegative, parsePositive } from '../../fields/parse-entry.ts';
+import { RemoveButton } from '../../fields/remove-button.tsx';
 import type { SectionProps } from '../section.ts';
 
 const orders = [
@@ -76,46 +77,42 @@ export function RunsTable({
               </td>
               {[core, arm].map((species) => (
                 <td class="number" key={species}>
-                  <Field
+                  <NumberField
                     label={`${speciesName(sheet, species)} charged in ${called}, mmol`}
-                    align="right"
+                    value={chargedMol[species]}
+                    factor={1000}
                     placeholder="–"
-                    value={shown(chargedMol[species], 1000)}
-                    commit={committed(parsePositive, setCharge(species))}
+                    parse={parsePositive}
+                    take={setCharge(species)}
                   />
                 </td>
               ))}
               <td class="number">
-                <Field
+                <NumberField
                   label={`Volume of ${called} in mL`}
-                  align="right"
+                  value={volumeL}
+                  factor={1000}
                   placeholder="–"
-                  value={shown(volumeL, 1000)}
-                  commit={committed(parsePositive, (value) =>
-                    set('set volume', { volumeL: value === undefined ? undefined : value / 1000 }),
-                  )}
+                  parse={parsePositive}
+                  take={(value) =>
+                    set('set volume', { volumeL: value === undefined ? undefined : value / 1000 })
+                  }
                 />
               </td>
               <td class="number">
-                <Field
+                <NumberField
                   label={`Time of addition of ${called} in min`}
-                  align="right"
+                  value={additionTimeMin}
                   placeholder="–"
-                  value={shown(additionTimeMin)}
-                  commit={committed(parseNonNegative, (value) =>
-                    set('set addition time', { additionTimeMin: value }),
-                  )}
+                  parse={parseNonNegative}
+                  take={(value) => set('set addition time', { additionTimeMin: value })}
                 />
               </td>
               <td>
-                <button
-                  type="button"
-                  class="remove"
-                  aria-label={`Remove run ${called}`}
-                  onClick={() => change(`remove run ${called}`, (before) => removeRun(before, id))}
-                >
-                  ×
-                </button>
+                <RemoveButton
+                  what={`run ${called}`}
+                  remove={() => change(`remove run ${called}`, (before) => removeRun(before, id))}
+                />
               </td>
             </tr>
           );

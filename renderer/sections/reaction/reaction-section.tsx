@@ -9,7 +9,9 @@ import {
   whyNotRename,
 } from '../../../analysis/index.ts';
 import { Choice, Field } from '../../fields/field.tsx';
+import { NumberField } from '../../fields/number-field.tsx';
 import { parseNumber, parsePositive, shown } from '../../fields/parse-entry.ts';
+import { RemoveButton } from '../../fields/remove-button.tsx';
 import { SpeciesGlyph } from '../../species/species-glyph.tsx';
 import type { SectionProps } from '../section.ts';
 
@@ -164,33 +166,25 @@ function SpeciesRow({ sheet, species, change }: RowProps) {
         />
       </td>
       <td class="number">
-        <Field
+        <NumberField
           label={`Molar mass of ${called}`}
-          align="right"
-          value={shown(molarMassGPerMol)}
+          value={molarMassGPerMol}
           placeholder="–"
-          commit={(text) => {
-            const entry = parsePositive(text);
-            if (!entry.ok) return entry.message;
-            const { value } = entry;
+          parse={parsePositive}
+          take={(value) =>
             change('set molar mass', (before) =>
               updateSpecies(before, id, { molarMassGPerMol: value }),
-            );
-            return null;
-          }}
+            )
+          }
         />
       </td>
       <td>
         {!isFixed && (
-          <button
-            type="button"
-            class="remove"
-            aria-label={`Remove ${called}`}
+          <RemoveButton
+            what={called}
             title={`Remove ${called}, with its standards`}
-            onClick={() => change(`remove ${called}`, (before) => removeSpecies(before, id))}
-          >
-            ×
-          </button>
+            remove={() => change(`remove ${called}`, (before) => removeSpecies(before, id))}
+          />
         )}
       </td>
     </tr>

@@ -6,13 +6,10 @@ import {
   speciesName,
   updateStandard,
 } from '../../../analysis/index.ts';
-import { Choice, Field } from '../../fields/field.tsx';
-import {
-  parseConcentration,
-  parsePathLength,
-  parsePercent,
-  shown,
-} from '../../fields/parse-entry.ts';
+import { Choice } from '../../fields/field.tsx';
+import { NumberField } from '../../fields/number-field.tsx';
+import { parseConcentration, parsePathLength, parsePercent } from '../../fields/parse-entry.ts';
+import { RemoveButton } from '../../fields/remove-button.tsx';
 import { LoadLine } from '../../import/load-line.tsx';
 import { StandardsPlot } from '../../plots/standards-plot.tsx';
 import { SpeciesGlyph } from '../../species/species-glyph.tsx';
@@ -149,59 +146,42 @@ function StandardRow({
         {isEpsilon ? (
           <span class="soft">already ε</span>
         ) : (
-          <Field
+          <NumberField
             label={`Concentration of ${id}`}
-            align="right"
-            isNeeded
+            value={standard.concentrationMolPerL}
+            factor={1e6}
             placeholder="needed"
             title="A bare number is in µmol/L; or type a unit: 25 µM, 2.5e-5 M"
-            value={shown(standard.concentrationMolPerL, 1e6)}
-            commit={(text) => {
-              const entry = parseConcentration(text);
-              if (!entry.ok) return entry.message;
-              set('set concentration', { concentrationMolPerL: entry.value });
-              return null;
-            }}
+            isNeeded
+            parse={parseConcentration}
+            take={(value) => set('set concentration', { concentrationMolPerL: value })}
           />
         )}
       </td>
       <td class="number">
-        <Field
+        <NumberField
           label={`Relative standard uncertainty of ${id} in %`}
-          align="right"
+          value={standard.relativeStandardUncertainty}
+          factor={100}
           placeholder="not given"
-          value={shown(standard.relativeStandardUncertainty, 100)}
-          commit={(text) => {
-            const entry = parsePercent(text);
-            if (!entry.ok) return entry.message;
-            set('set uncertainty', { relativeStandardUncertainty: entry.value });
-            return null;
-          }}
+          parse={parsePercent}
+          take={(value) => set('set uncertainty', { relativeStandardUncertainty: value })}
         />
       </td>
       <td class="number">
-        <Field
+        <NumberField
           label={`Path length of ${id} in cm`}
-          align="right"
+          value={standard.pathLengthCm}
           placeholder="1"
-          value={shown(standard.pathLengthCm)}
-          commit={(text) => {
-            const entry = parsePathLength(text);
-            if (!entry.ok) return entry.message;
-            set('set path length', { pathLengthCm: entry.value });
-            return null;
-          }}
+          parse={parsePathLength}
+          take={(value) => set('set path length', { pathLengthCm: value })}
         />
       </td>
       <td>
-        <button
-          type="button"
-          class="remove"
-          aria-label={`Remove standard ${id}`}
-          onClick={() => change(`remove standard ${id}`, (before) => removeStandard(before, id))}
-        >
-          ×
-        </button>
+        <RemoveButton
+          what={`standard ${id}`}
+          remove={() => change(`remove standard ${id}`, (before) => removeStandard(before, id))}
+        />
       </td>
     </tr>
   );

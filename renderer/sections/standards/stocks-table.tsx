@@ -1,6 +1,7 @@
 import { removeStock, type Sheet, speciesName, updateStock } from '../../../analysis/index.ts';
-import { Field } from '../../fields/field.tsx';
-import { parsePercent, shown } from '../../fields/parse-entry.ts';
+import { NumberField } from '../../fields/number-field.tsx';
+import { parsePercent } from '../../fields/parse-entry.ts';
+import { RemoveButton } from '../../fields/remove-button.tsx';
 import type { SectionProps } from '../section.ts';
 
 type StocksTableProps = Pick<SectionProps, 'sheet' | 'change'> & {
@@ -29,31 +30,24 @@ export function StocksTable({ sheet, change, stocks }: StocksTableProps) {
             <td>{id}</td>
             <td>{speciesName(sheet, species)}</td>
             <td class="number">
-              <Field
+              <NumberField
                 label={`Relative standard uncertainty of stock ${id} in %`}
-                align="right"
-                value={shown(relativeStandardUncertainty, 100)}
+                value={relativeStandardUncertainty}
+                factor={100}
                 placeholder="not given"
-                commit={(text) => {
-                  const entry = parsePercent(text);
-                  if (!entry.ok) return entry.message;
-                  const { value } = entry;
+                parse={parsePercent}
+                take={(value) =>
                   change('set stock uncertainty', (before) =>
                     updateStock(before, id, { relativeStandardUncertainty: value }),
-                  );
-                  return null;
-                }}
+                  )
+                }
               />
             </td>
             <td>
-              <button
-                type="button"
-                class="remove"
-                aria-label={`Remove stock ${id}`}
-                onClick={() => change(`remove stock ${id}`, (before) => removeStock(before, id))}
-              >
-                ×
-              </button>
+              <RemoveButton
+                what={`stock ${id}`}
+                remove={() => change(`remove stock ${id}`, (before) => removeStock(before, id))}
+              />
             </td>
           </tr>
         ))}

@@ -264,6 +264,20 @@ describe('monobis report', () => {
   });
 });
 
+describe('the README', () => {
+  it('shows what the command prints for the sample', async () => {
+    const readme = await readFile(path.join(root, 'README.md'), 'utf8');
+    const [, shown = ''] = /```text\n([\s\S]*?)```/.exec(readme) ?? [];
+    const { out } = await called('quantify', sample);
+    const parts = shown
+      .split('…')
+      .map((part) => part.trim())
+      .filter((part) => part !== '');
+    expect(parts.length).toBeGreaterThan(1);
+    for (const part of parts) expect(out).toContain(part);
+  });
+});
+
 describe('the call itself', () => {
   it.each([
     [[]],
