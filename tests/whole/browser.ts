@@ -110,14 +110,13 @@ async function packagedBrowser(): Promise<{ executable: string; clear: () => Pro
 
 /**
  * Its own font settings look in /tmp/fonts only: with another TMPDIR it finds no font at all and
- * stops at the first text field.
+ * stops at the first text field. Only its own: what else a machine has would change the picture.
  */
 async function writeFontSettings(folder: string): Promise<void> {
-  const folders = [path.join(folder, 'fonts'), '/usr/share/fonts'];
   const settings = `<?xml version="1.0"?>
 <!DOCTYPE fontconfig SYSTEM "fonts.dtd">
 <fontconfig>
-${folders.map((each) => `  <dir>${each}</dir>`).join('\n')}
+  <dir>${path.join(folder, 'fonts')}</dir>
   <cachedir>${path.join(folder, 'font-cache')}</cachedir>
 </fontconfig>
 `;
