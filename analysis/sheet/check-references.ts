@@ -28,6 +28,7 @@ function duplicates(sheet: Sheet): ReferenceFault | null {
     standards: sheet.standards ?? [],
     runs: sheet.runs ?? [],
     aliquots: sheet.aliquots ?? [],
+    noiseScans: sheet.noiseScans ?? [],
   };
   for (const [list, entries] of Object.entries(lists)) {
     const seen = new Set<string>();
@@ -103,6 +104,13 @@ function spectraFaults(sheet: Sheet): ReferenceFault | null {
     for (const [index, entry] of (sheet[list] ?? []).entries()) {
       const path = [list, String(index), 'spectrum'];
       const fault = spectrumFault(entry.spectrum, path, `"${entry.id}"`);
+      if (fault) return fault;
+    }
+  }
+  for (const [index, { id, spectra }] of (sheet.noiseScans ?? []).entries()) {
+    for (const [scan, spectrum] of spectra.entries()) {
+      const path = ['noiseScans', String(index), 'spectra', String(scan)];
+      const fault = spectrumFault(spectrum, path, `"${id}", scan ${scan + 1}`);
       if (fault) return fault;
     }
   }

@@ -7,6 +7,10 @@ export interface FitSettings {
   readonly excludeNm: readonly (readonly [number, number])[];
   readonly baseline: NonNullable<SheetFit['baseline']>;
   readonly shift: NonNullable<SheetFit['shift']>;
+  /** Standard deviation of the prior on the offset, nm; null for none. */
+  readonly shiftPriorNm: number | null;
+  /** Fraction of the light in the reference beam; "fit" where it is to be found. */
+  readonly strayLight: number | 'fit';
   readonly upperAbsorbance: number;
   readonly noise: { readonly constant: number; readonly transmittance: number } | null;
 }
@@ -18,6 +22,8 @@ export function fitSettings(sheet: Sheet): FitSettings {
     excludeNm: fit.excludeNm ?? [],
     baseline: fit.baseline ?? 'offset',
     shift: fit.shift ?? 'none',
+    shiftPriorNm: fit.shiftStandardUncertaintyNm ?? null,
+    strayLight: fit.strayLight ?? 0,
     upperAbsorbance: fit.upperAbsorbance ?? 2,
     noise: fit.noise ?? null,
   };

@@ -73,6 +73,15 @@ const standardSchema = v.looseObject({
   pathLengthCm: v.optional(positive),
 });
 
+/** Scans of one and the same cuvette (a blank, a solution): their scatter is the instrument's noise. */
+const noiseScansSchema = v.looseObject({
+  id,
+  spectra: v.pipe(
+    v.array(spectrumSchema, 'must be a list of spectra'),
+    v.nonEmpty('must not be empty'),
+  ),
+});
+
 const runSchema = v.looseObject({
   id,
   name: v.optional(text),
@@ -119,6 +128,15 @@ const fitSchema = v.looseObject({
     ),
   ),
   shift: v.optional(v.picklist(['none', 'common'], 'must be "none" or "common"')),
+  /** How well the wavelength scale is known: a prior of mean 0 on the offset, for shift "common". */
+  shiftStandardUncertaintyNm: v.optional(positive),
+  /** Stray light as a fraction of the light in the reference beam, or to be found by the fit. */
+  strayLight: v.optional(
+    v.union(
+      [v.literal('fit'), v.pipe(finite, v.minValue(0), v.maxValue(0.05))],
+      'must be "fit", or a fraction from 0 to 0.05',
+    ),
+  ),
   upperAbsorbance: v.optional(positive),
   noise: v.optional(v.looseObject({ constant: nonNegative, transmittance: nonNegative })),
 });
@@ -139,6 +157,7 @@ export const sheetSchema = v.looseObject({
   standards: v.optional(v.array(standardSchema, 'must be a list of standards')),
   runs: v.optional(v.array(runSchema, 'must be a list of runs')),
   aliquots: v.optional(v.array(aliquotSchema, 'must be a list of aliquots')),
+  noiseScans: v.optional(v.array(noiseScansSchema, 'must be a list of groups of scans')),
   fit: v.optional(fitSchema),
 });
 
@@ -150,6 +169,7 @@ export type SheetStock = NonNullable<Sheet['stocks']>[number];
 export type SheetStandard = NonNullable<Sheet['standards']>[number];
 export type SheetRun = NonNullable<Sheet['runs']>[number];
 export type SheetAliquot = NonNullable<Sheet['aliquots']>[number];
+export type SheetNoiseScans = NonNullable<Sheet['noiseScans']>[number];
 export type SheetSpectrum = SheetStandard['spectrum'];
 export type EmbeddedSpectrum = NonNullable<SheetSpectrum['embedded']>;
 export type SheetDilution = NonNullable<SheetAliquot['dilution']>;
