@@ -1,7 +1,9 @@
 import { inverse, Matrix } from 'ml-matrix';
 import { chiSquareQuantile } from '../distributions/chi-square.ts';
-import { interpolated, interpolation } from '../spectrum/interpolate.ts';
+import { type Offsets, offsetsOf } from './offsets.ts';
+import { absorbancePerEpsilon, overlaid } from './overlaid.ts';
 import type { Solution } from './solution.ts';
+import { type StraightLine, straightLine } from './straight-line.ts';
 
 /** An independent error of relative size 1 σ, and how far it moves the whole ε of the species. */
 export interface ScaleSensitivity {
@@ -13,59 +15,90 @@ export interface ScaleSensitivity {
 /** All solutions of one species together. */
 export interface SpeciesStandard {
   readonly species: string;
+  /** As measured, but each with the offset of its own taken out of `epsilon`. */
   readonly solutions: readonly Solution[];
+  /** What was taken out, in absorbance as that solution was recorded; 0 for a single solution. */
+  readonly offsets: readonly number[];
+  /**
+   * Standard uncertainty of a constant in the whole ε, L mol⁻¹ cm⁻¹, as far as the solutions show it
+   * (0 for a single one). A fitted baseline takes it up; with baseline "none" it moves the amounts.
+   */
+  readonly constantUncertainty: number;
   /** Factor that brings each solution onto the combined spectrum; 1 is perfect agreement. */
   readonly factors: readonly number[];
   readonly scaleErrors: readonly ScaleSensitivity[];
   /** Relative standard uncertainty of the scale of ε: the root of the sum of squares of the above. */
   readonly relativeScaleUncertainty: number;
-  /** Agreement of the solutions beyond what their uncertainties allow; null for a single one. */
-  readonly agreement: {
-    readonly chiSquare: number;
-    readonly df: number;
-    readonly limit: number;
-  } | null;
+  /** Agreement of the scales beyond what their uncertainties allow; null for a single solution. */
+  readonly agreement: Agreement | null;
 }
 
-/** Smallest relative uncertainty of a factor between solutions: keeps exact copies apart from singular. */
+interface Agreement {
+  readonly chiSquare: number;
+  readonly df: number;
+  readonly limit: number;
+  /** The one solution without which the others agree, and how far it is from them; null if there is no such. */
+  readonly apart: { readonly standard: string; readonly relative: number } | null;
+}
+
+interface CombineOptions {
+  /** How much more variance a smooth sum over points has than if their noise were independent (Σ of its autocorrelation). */
+  readonly noiseInflation?: number;
+}
+
+/** Smallest relative uncertainty of a scale: keeps exact copies apart from singular. */
 const factorFloor = 1e-6;
+/** A scale is not believed to be known better than this beforehand: solutions are made by hand. */
+const smallestPrior = 0.02;
 /** The chance that solutions which do agree are called inconsistent. */
 const falseAlarm = 0.01;
 
 /**
- * Combines the solutions of one species by generalised least squares on the logarithm of their
- * scales: the covariance holds each solution's own error, the stocks they share and the noise of
- * the factor between them (errors of 1 % and less, so the logarithm is as good as linear).
- * Where they scatter more than that, the scatter is added to the uncertainty (Birge ratio).
+ * Combines the solutions of one species. Each is held against the one of widest range by a straight
+ * line, slope and constant, noise in both. The constants are the offsets of the solutions' own
+ * baselines and are taken out (`offsetsOf`): left in, they bend the slopes, and where the solutions
+ * reach differently far they become steps in ε. The slopes are the scales: they are combined by generalised least squares on
+ * their logarithms; the covariance holds each solution's own error, the stocks they share and noise
+ * (errors of 1 % and less, so the logarithm is as good as linear). Where the scales scatter more
+ * than that, the scatter is added to the uncertainty (Birge ratio).
  *
- * @param solutions one or more solutions of one species whose spectra overlap
+ * The constant is free from two solutions on: measured on two, it costs less than 1 % in precision. A
+ * single solution is taken as it is, its offset unseen.
+ *
+ * @param recorded one or more solutions of one species whose spectra overlap
  */
-export function combineSolutions(solutions: readonly Solution[]): SpeciesStandard {
-  const first = solutions[0];
+export function combineSolutions(
+  recorded: readonly Solution[],
+  { noiseInflation = 1 }: CombineOptions = {},
+): SpeciesStandard {
+  const [first] = recorded;
   if (!first) throw new Error('a species without solutions cannot be combined');
-  const logScales = solutions.map((solution) => logScale(solution, widest(solutions)));
-  const covariance = scaleCovariance(
-    solutions,
-    logScales.map(({ variance }) => variance),
-  );
+  const reference = widest(recorded);
+  const lines = recorded.map((solution) => lineAgainst(reference, solution, noiseInflation));
+  const offsets = offsetsAgainst(recorded, lines);
+  const solutions = recorded.map((solution, s) => withoutOffset(solution, offsets.epsilon[s]!));
+  const logScales = lines.map(({ slope }) => Math.log(slope));
+  const noise = recorded.map((solution) => noiseInflation * scaleNoise(solution));
+  const covariance = scaleCovariance(recorded, noise);
   const weights = gaussMarkovWeights(covariance);
-  const mean = logScales.reduce((sum, { value }, s) => sum + weights[s]! * value, 0);
-  const agreement = agreementOf(
-    logScales.map(({ value }) => value - mean),
-    covariance,
-  );
-  const scaleErrors = sensitivities(solutions, weights);
-  const excess = agreement ? agreement.chiSquare / agreement.df - 1 : 0;
+  const mean = logScales.reduce((sum, value, s) => sum + weights[s]! * value, 0);
+  const agreement = agreementOf(recorded, logScales, covariance);
+  const scaleErrors = sensitivities(recorded, weights);
+  scaleErrors.push(...noiseOfScales(first.species, weights, noise));
   if (agreement && agreement.chiSquare > agreement.limit) {
+    const excess = agreement.chiSquare / agreement.df - 1;
     scaleErrors.push({
       source: `scatter between standards of ${first.species}`,
       relative: Math.sqrt(excess * meanVariance(weights, covariance)),
     });
   }
+  const factors = logScales.map((value) => Math.exp(mean - value));
   return {
     species: first.species,
     solutions,
-    factors: logScales.map(({ value }) => Math.exp(mean - value)),
+    offsets: recorded.map((solution, s) => absorbancePerEpsilon(solution) * offsets.epsilon[s]!),
+    constantUncertainty: offsets.uncertainty * (factors[recorded.indexOf(reference)] ?? 1),
+    factors,
     scaleErrors,
     relativeScaleUncertainty: Math.hypot(...scaleErrors.map(({ relative }) => relative)),
     agreement,
@@ -82,24 +115,78 @@ function widest(solutions: readonly Solution[]): Solution {
   });
 }
 
-/** Weighted least-squares slope of one solution's ε on the reference's, as a logarithm with its variance. */
-function logScale(solution: Solution, reference: Solution): { value: number; variance: number } {
-  if (solution === reference) return { value: 0, variance: 0 };
-  const map = interpolation(solution.wavelengthNm, solution.usable, reference.wavelengthNm);
-  const epsilon = interpolated(map, solution.epsilon);
-  const sd = interpolated(map, solution.sd);
-  let xx = 0;
-  let xy = 0;
-  for (let i = 0; i < map.points; i++) {
-    if (map.covered[i] === 0 || reference.usable[i] === 0) continue;
-    const weight = 1 / (sd[i]! ** 2 + reference.sd[i]! ** 2);
-    xx += weight * reference.epsilon[i]! ** 2;
-    xy += weight * reference.epsilon[i]! * epsilon[i]!;
+const same: StraightLine = { slope: 1, intercept: 0, slopeVariance: 0, interceptVariance: 0 };
+
+/**
+ * One solution's ε on the reference's. Where they overlap in a stretch that hardly says how steep it
+ * is (the tails of bands), the slope is drawn to 1 by what is known beforehand of the scales.
+ */
+function lineAgainst(
+  reference: Solution,
+  solution: Solution,
+  noiseInflation: number,
+): StraightLine {
+  if (solution === reference) return same;
+  const points = overlaid(reference, solution);
+  const free = straightLine(points);
+  if (!free) return same;
+  const variance = (noiseInflation * free.slopeVariance) / free.slope ** 2;
+  const before =
+    priorVariance([...reference.scaleErrors, ...solution.scaleErrors]) + smallestPrior ** 2;
+  const drawn = Math.exp((Math.log(free.slope) * before) / (before + variance));
+  return straightLine(points, drawn) ?? free;
+}
+
+function priorVariance(errors: Solution['scaleErrors']): number {
+  return errors.reduce((sum, { relative }) => sum + relative * relative, 0);
+}
+
+function offsetsAgainst(recorded: readonly Solution[], lines: readonly StraightLine[]): Offsets {
+  return offsetsOf(
+    recorded.map((solution, s) => ({
+      slope: lines[s]!.slope,
+      intercept: lines[s]!.intercept,
+      interceptVariance: lines[s]!.interceptVariance,
+      absorbancePerEpsilon: absorbancePerEpsilon(solution),
+    })),
+  );
+}
+
+function withoutOffset(solution: Solution, offset: number): Solution {
+  if (offset === 0) return solution;
+  return { ...solution, epsilon: solution.epsilon.map((value) => value - offset) };
+}
+
+/** Relative variance of the scale that the solution's own point noise gives, with a free constant. */
+function scaleNoise({ epsilon, sd, usable }: Solution): number {
+  let [total, sum, squares] = [0, 0, 0];
+  for (const [i, one] of usable.entries()) {
+    if (one === 0) continue;
+    const weight = 1 / sd[i]! ** 2;
+    total += weight;
+    sum += weight * epsilon[i]!;
+    squares += weight * epsilon[i]! ** 2;
   }
-  const slope = xy / xx;
-  return slope > 0
-    ? { value: Math.log(slope), variance: 1 / (xx * slope * slope) }
-    : { value: 0, variance: 0 };
+  const information = squares - (sum * sum) / total;
+  return information > 0 ? Math.min(1 / information, 1) : 1;
+}
+
+/**
+ * The mean takes the scales by their weights, the joined spectrum its points by their noise: what the
+ * noise adds to the scale because the two differ (where they agree, the point noise says it all).
+ */
+function noiseOfScales(
+  species: string,
+  weights: readonly number[],
+  noise: readonly number[],
+): ScaleSensitivity[] {
+  const total = noise.reduce((sum, variance) => sum + 1 / variance, 0);
+  const relative = Math.hypot(
+    ...weights.map((weight, s) => (weight - 1 / noise[s]! / total) * Math.sqrt(noise[s]!)),
+  );
+  return relative > factorFloor
+    ? [{ source: `factors between standards of ${species}`, relative }]
+    : [];
 }
 
 function scaleCovariance(solutions: readonly Solution[], noise: readonly number[]): Matrix {
@@ -135,17 +222,69 @@ function meanVariance(weights: readonly number[], covariance: Matrix): number {
 }
 
 function agreementOf(
-  departures: readonly number[],
+  solutions: readonly Solution[],
+  logScales: readonly number[],
   covariance: Matrix,
-): SpeciesStandard['agreement'] {
-  const df = departures.length - 1;
-  if (df < 1) return null;
-  const weight = inverse(covariance);
-  let chiSquare = 0;
-  for (const [s, a] of departures.entries()) {
-    for (const [t, b] of departures.entries()) chiSquare += a * b * weight.get(s, t);
+): Agreement | null {
+  if (solutions.length < 2) return null;
+  const all = Array.from(solutions.keys());
+  const { chiSquare, limit } = consistency(logScales, covariance, all);
+  return {
+    chiSquare,
+    df: all.length - 1,
+    limit,
+    apart: chiSquare > limit ? apartOf(solutions, logScales, covariance) : null,
+  };
+}
+
+/** χ² of the scales of some solutions about their best mean, and what it stays below if they agree. */
+function consistency(
+  logScales: readonly number[],
+  covariance: Matrix,
+  members: readonly number[],
+): { chiSquare: number; limit: number; mean: number } {
+  const weight = inverse(covariance.selection([...members], [...members]));
+  const rows = weight.to2DArray();
+  let [top, bottom] = [0, 0];
+  for (const [s, row] of rows.entries()) {
+    const sum = row.reduce((all, entry) => all + entry, 0);
+    top += sum * logScales[members[s]!]!;
+    bottom += sum;
   }
-  return { chiSquare, df, limit: chiSquareQuantile(1 - falseAlarm, df) };
+  const mean = top / bottom;
+  let chiSquare = 0;
+  for (const [s, row] of rows.entries()) {
+    for (const [t, entry] of row.entries()) {
+      chiSquare += entry * (logScales[members[s]!]! - mean) * (logScales[members[t]!]! - mean);
+    }
+  }
+  const df = members.length - 1;
+  const limit = df > 0 ? chiSquareQuantile(1 - falseAlarm, df) : Number.POSITIVE_INFINITY;
+  return { chiSquare, limit, mean };
+}
+
+/** The solution whose leaving brings the others best together, if they then agree. Two cannot tell. */
+function apartOf(
+  solutions: readonly Solution[],
+  logScales: readonly number[],
+  covariance: Matrix,
+): Agreement['apart'] {
+  if (solutions.length < 3) return null;
+  const all = Array.from(solutions.keys());
+  const without = all.map((s) => ({
+    s,
+    ...consistency(
+      logScales,
+      covariance,
+      all.filter((t) => t !== s),
+    ),
+  }));
+  const best = without.reduce((a, b) => (b.chiSquare < a.chiSquare ? b : a));
+  if (best.chiSquare > best.limit) return null;
+  return {
+    standard: solutions[best.s]!.standard,
+    relative: Math.exp(logScales[best.s]! - best.mean) - 1,
+  };
 }
 
 function sensitivities(
