@@ -31,24 +31,27 @@ export function straightLine(points: NoisyPoints, heldSlope?: number): StraightL
   let slope = heldSlope ?? ordinarySlope(x, y);
   for (let round = 0; ; round++) {
     const { weight, meanX, meanY, total } = weighted(points, slope);
-    let [top, bottom, spread] = [0, 0, 0];
+    let [top, bottom, betaSum, betaSquares] = [0, 0, 0, 0];
     for (let i = 0; i < x.length; i++) {
       const [u, v] = [x[i]! - meanX, y[i]! - meanY];
       const beta = weight[i]! * (u * sdY[i]! ** 2 + slope * v * sdX[i]! ** 2);
       top += weight[i]! * beta * v;
       bottom += weight[i]! * beta * u;
-      spread += weight[i]! * beta * beta;
+      betaSum += weight[i]! * beta;
+      betaSquares += weight[i]! * beta * beta;
     }
     const next = heldSlope ?? top / bottom;
     const isSettled = Math.abs(next - slope) <= settled * Math.abs(slope);
     slope = next;
+    const spread = betaSquares - betaSum ** 2 / total;
     if (!(slope > 0 && spread > 0 && Number.isFinite(slope))) return null;
     if (!isSettled && round < mostRounds) continue;
     return {
       slope,
       intercept: meanY - slope * meanX,
       slopeVariance: 1 / spread,
-      interceptVariance: 1 / total + (heldSlope === undefined ? meanX ** 2 / spread : 0),
+      interceptVariance:
+        1 / total + (heldSlope === undefined ? (meanX + betaSum / total) ** 2 / spread : 0),
     };
   }
 }
