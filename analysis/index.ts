@@ -31,11 +31,13 @@ export {
 } from './sheet/defaults.ts';
 export {
   addAliquots,
+  addNoiseScans,
   addRun,
   addSpecies,
   addStandards,
   addStockFor,
   removeAliquot,
+  removeNoiseScans,
   removeRun,
   removeSpecies,
   removeStandard,

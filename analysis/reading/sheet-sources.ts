@@ -22,6 +22,9 @@ export function sheetSources(
   const owners = [
     ...(sheet.standards ?? []).map((entry) => ({ ...entry, what: `standard ${entry.id}` })),
     ...(sheet.aliquots ?? []).map((entry) => ({ ...entry, what: `aliquot ${entry.id}` })),
+    ...(sheet.noiseScans ?? []).flatMap(({ id, spectra }) =>
+      spectra.map((spectrum) => ({ spectrum, what: `noise scans ${id}` })),
+    ),
   ];
   for (const { spectrum, what } of owners) {
     const source = sourceOf(spectrum, readings);
@@ -30,7 +33,8 @@ export function sheetSources(
     found.set(key, {
       file: source.file,
       sha256: source.sha256,
-      what: before ? `${before.what}, ${what}` : what,
+      // many scans of a group may stand in one file
+      what: before && !before.what.endsWith(what) ? `${before.what}, ${what}` : what,
       decisions: [...new Set([...(before?.decisions ?? []), ...source.decisions])],
     });
   }

@@ -177,6 +177,21 @@ export function removeAliquot(sheet: Sheet, id: string): Sheet {
   return { ...sheet, aliquots: without(sheet.aliquots ?? [], id) };
 }
 
+/**
+ * Adds scans of one and the same cuvette, which show the noise, as one group. Spectra that are no
+ * absorbances are left out; without any there is no group.
+ */
+export function addNoiseScans(sheet: Sheet, scans: readonly EmbeddedSpectrum[]): Sheet {
+  const spectra = scans.flatMap((embedded) => (embedded.absorbance ? [{ embedded }] : []));
+  if (spectra.length === 0) return sheet;
+  const groups = sheet.noiseScans ?? [];
+  return { ...sheet, noiseScans: [...groups, { id: freeId('scans', groups), spectra }] };
+}
+
+export function removeNoiseScans(sheet: Sheet, id: string): Sheet {
+  return { ...sheet, noiseScans: without(sheet.noiseScans ?? [], id) };
+}
+
 /** Adds a run and, if asked, puts an aliquot into it. */
 export function addRun(sheet: Sheet, aliquotId?: string): Sheet {
   const id = freeId('r', sheet.runs ?? []);

@@ -1,6 +1,7 @@
 import { signal } from '@preact/signals';
 import {
   addAliquots,
+  addNoiseScans,
   addStandards,
   type EmbeddedSpectrum,
   embeddedFrom,
@@ -15,7 +16,11 @@ import { change, sheet, sheetsShown } from '../state/store.ts';
 import { readFileBytes } from '../worker/analysis-client.ts';
 
 /** Where spectra are to go. */
-export type Destination = 'standards' | 'aliquots';
+export type Destination = 'standards' | 'aliquots' | 'noise-scans';
+
+export function isDestination(text: string | null | undefined): text is Destination {
+  return text === 'standards' || text === 'aliquots' || text === 'noise-scans';
+}
 
 /** Spectra that were read and whose destination is still to be asked. */
 export const pending = signal<readonly EmbeddedSpectrum[] | null>(null);
@@ -65,6 +70,10 @@ export function place(spectra: readonly EmbeddedSpectrum[], destination: Destina
     change(`add ${count} as aliquots`, (before) => addAliquots(before, spectra, null));
     return;
   }
+  if (destination === 'noise-scans') {
+    placeScans(spectra);
+    return;
+  }
   const guesses = spectra.map((spectrum) => ({
     spectrum,
     ...likelySpecies(sheet.value, spectrum),
@@ -83,6 +92,24 @@ export function place(spectra: readonly EmbeddedSpectrum[], destination: Destina
       return `${source?.file ?? ''} · ${name}: ${speciesName(sheet.value, species)} (${why})`;
     }),
   );
+}
+
+/** Scans given together are of one cuvette: one group. */
+function placeScans(spectra: readonly EmbeddedSpectrum[]): void {
+  const [scans, others] = [
+    spectra.filter(({ absorbance }) => absorbance !== undefined),
+    spectra.filter(({ absorbance }) => absorbance === undefined),
+  ];
+  if (scans.length > 0) {
+    change(`take the noise from ${countOf(scans)}`, (before) => addNoiseScans(before, scans));
+  }
+  if (others.length > 0) {
+    notify(
+      'refusal',
+      'Molar absorptivities show no noise of an instrument; these were left out:',
+      others.map(({ name, source }) => `${source?.file ?? ''} · ${name}`),
+    );
+  }
 }
 
 /** The question where they belong was put aside: said, so that nothing vanishes in silence. */

@@ -33,6 +33,9 @@ export function Dialogs() {
             <button type="button" onClick={() => place(spectra, 'aliquots')}>
               Aliquots of a crude
             </button>
+            <button type="button" onClick={() => place(spectra, 'noise-scans')}>
+              Scans of one cuvette, for the noise
+            </button>
             <button type="button" class="quiet" onClick={() => leaveOut(spectra)}>
               Leave them out
             </button>

@@ -1,5 +1,5 @@
 import { signal } from '@preact/signals';
-import type { Destination } from '../import/imports.ts';
+import { type Destination, isDestination } from '../import/imports.ts';
 import { openedAll, sheetSource } from '../platform/browser.ts';
 import { attempt, notify } from '../state/notices.ts';
 import { isOpen, sheetsShown } from '../state/store.ts';
@@ -28,7 +28,7 @@ export function startTakingDrops(): void {
     const files = [...(event.dataTransfer?.files ?? [])];
     const section = event.target instanceof Element ? event.target.closest('[data-takes]') : null;
     const takes = section?.getAttribute('data-takes');
-    const destination = takes === 'standards' || takes === 'aliquots' ? takes : null;
+    const destination = isDestination(takes) ? takes : null;
     void attempt(() => dropped(files, destination));
   });
 }

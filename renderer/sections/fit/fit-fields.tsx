@@ -2,7 +2,9 @@ import { fitSettings, setFit } from '../../../analysis/index.ts';
 import { Choice, Field } from '../../fields/field.tsx';
 import { parseNonNegative, parsePositive, shown } from '../../fields/parse-entry.ts';
 import type { SectionProps } from '../section.ts';
+import { NoiseScans } from './noise-scans.tsx';
 import { parseRanges, shownRanges } from './parse-ranges.ts';
+import { StrayLightField } from './stray-light-field.tsx';
 
 const baselines = [
   { value: 'offset', text: 'offset: one constant' },
@@ -84,6 +86,11 @@ export function FitFields({ sheet, change, low, high }: FitFieldsProps) {
             change('set the wavelength offset', (before) => setFit(before, { shift }));
           }}
         />
+        {settings.shift === 'common' && <ShiftPrior sheet={sheet} change={change} />}
+      </dd>
+      <dt>stray light</dt>
+      <dd>
+        <StrayLightField sheet={sheet} change={change} />
       </dd>
       <dt>upper absorbance</dt>
       <dd>
@@ -106,9 +113,35 @@ export function FitFields({ sheet, change, low, high }: FitFieldsProps) {
   );
 }
 
+/** How well the wavelength scale is known: the less the offset is free, the sharper the answer. */
+function ShiftPrior({ sheet, change }: Pick<SectionProps, 'sheet' | 'change'>) {
+  return (
+    <>
+      , known to{' '}
+      <Field
+        label="How well the wavelength scale is known, standard uncertainty, nm"
+        title="Standard uncertainty with which crude and standards agree in wavelength before the fit; left empty, the offset is free, which widens the interval"
+        placeholder="free"
+        value={shown(sheet.fit?.shiftStandardUncertaintyNm)}
+        commit={(text) => {
+          const entry = parsePositive(text);
+          if (!entry.ok) return entry.message;
+          const { value } = entry;
+          change('set how well the wavelength scale is known', (before) =>
+            setFit(before, { shiftStandardUncertaintyNm: value }),
+          );
+          return null;
+        }}
+      />{' '}
+      nm
+    </>
+  );
+}
+
 /** Both parts of the noise, or neither: half of a noise model is none. */
 function NoiseFields({ sheet, change }: Pick<SectionProps, 'sheet' | 'change'>) {
   const noise = sheet.fit?.noise;
+  const placeholder = (sheet.noiseScans ?? []).length > 0 ? 'from scans' : 'estimated';
   const set = (part: 'constant' | 'transmittance', factor: number) => (text: string) => {
     const entry = parseNonNegative(text);
     if (!entry.ok) return entry.message;
@@ -131,7 +164,7 @@ function NoiseFields({ sheet, change }: Pick<SectionProps, 'sheet' | 'change'>) 
         <Field
           label="Constant part of the noise, mAU"
           title="Standard deviation of one reading, the same at every absorbance"
-          placeholder="estimated"
+          placeholder={placeholder}
           value={shown(noise?.constant, 1000)}
           commit={set('constant', 1000)}
         />{' '}
@@ -139,11 +172,15 @@ function NoiseFields({ sheet, change }: Pick<SectionProps, 'sheet' | 'change'>) 
         <Field
           label="Part of the noise from transmittance, mAU at absorbance 0"
           title="Grows as 10 to the absorbance"
-          placeholder="estimated"
+          placeholder={placeholder}
           value={shown(noise?.transmittance, 1000)}
           commit={set('transmittance', 1000)}
         />{' '}
         from transmittance
+      </dd>
+      <dt>noise from scans</dt>
+      <dd>
+        <NoiseScans sheet={sheet} change={change} />
       </dd>
     </>
   );

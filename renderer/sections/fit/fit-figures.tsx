@@ -6,7 +6,7 @@ import {
   type Quantified,
   quantifiedText,
 } from '../../../analysis/index.ts';
-import { noiseText } from './noise-text.ts';
+import { noiseOrigin, noiseText } from './noise-text.ts';
 
 /** How well the fit lies on the points, in figures. */
 export function FitFigures({ fit }: { readonly fit: AliquotResult['fit'] }) {
@@ -19,7 +19,7 @@ export function FitFigures({ fit }: { readonly fit: AliquotResult['fit'] }) {
       <dd>{figuresText(1000 * fit.residualRms)} mAU</dd>
       <dt>reduced χ²</dt>
       <dd>{fit.reducedChiSquare === null ? 'not known' : numberText(fit.reducedChiSquare, 2)}</dd>
-      <dt>noise, {noise.from === 'sheet' ? 'given' : 'estimated'}</dt>
+      <dt>noise, {noiseOrigin(noise)}</dt>
       <dd>{noiseText(noise)}</dd>
       {shiftNm.standardUncertainty !== 0 && (
         <>

@@ -10,3 +10,14 @@ export function noiseText({ constant, transmittance }: Noise): string {
   ].filter((part) => part !== '');
   return parts.length === 0 ? 'none' : parts.join(', ');
 }
+
+const origins: Readonly<Record<AliquotResult['fit']['noise']['from'], string>> = {
+  sheet: 'given',
+  scans: 'from the scans',
+  spectrum: 'estimated',
+};
+
+/** Where the noise is from, in a word or two. */
+export function noiseOrigin({ from }: Pick<AliquotResult['fit']['noise'], 'from'>): string {
+  return origins[from];
+}

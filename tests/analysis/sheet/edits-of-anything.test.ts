@@ -2,6 +2,7 @@ import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
 import {
   addAliquots,
+  addNoiseScans,
   addRun,
   addStandards,
   addStockFor,
@@ -9,6 +10,7 @@ import {
   newSheet,
   openSheet,
   removeAliquot,
+  removeNoiseScans,
   removeRun,
   removeSpecies,
   removeStandard,
@@ -79,6 +81,8 @@ const edit: fc.Arbitrary<Edit> = fc.oneof(
   withId((sheet, run) => addAliquots(sheet, [spectrum], run)),
   withChanges(fc.record({ run: idOrNone, pathLengthCm: number }, some), updateAliquot),
   withId(removeAliquot),
+  withId((sheet) => addNoiseScans(sheet, [spectrum])),
+  withId(removeNoiseScans),
   withId(addRun),
   withChanges(fc.record({ chargedMol: fc.dictionary(id, number, { maxKeys: 3 }) }), updateRun),
   withId(removeRun),

@@ -2,6 +2,7 @@ import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
 import {
   addAliquots,
+  addNoiseScans,
   addRun,
   addSpecies,
   addStandards,
@@ -9,6 +10,7 @@ import {
   newSheet,
   openSheet,
   removeAliquot,
+  removeNoiseScans,
   removeRun,
   removeSpecies,
   removeStandard,
@@ -62,6 +64,13 @@ const edits: readonly ((sheet: Sheet, at: number) => Sheet)[] = [
   (sheet, at) => addAliquots(sheet, [spectrum], sheet.runs?.[at % 3]?.id ?? null),
   (sheet, at) => updateAliquot(sheet, pick(sheet.aliquots, at), { dilution: { factor: 1 + at } }),
   (sheet, at) => removeAliquot(sheet, pick(sheet.aliquots, at)),
+  (sheet, at) => addNoiseScans(sheet, at % 2 ? [spectrum, spectrum] : [spectrum]),
+  (sheet, at) => removeNoiseScans(sheet, pick(sheet.noiseScans, at)),
+  (sheet, at) =>
+    setFit(sheet, {
+      strayLight: at % 3 ? 0.0005 : 'fit',
+      shiftStandardUncertaintyNm: at % 2 ? 0.1 : undefined,
+    }),
   (sheet, at) => addRun(sheet, pick(sheet.aliquots, at)),
   (sheet, at) =>
     updateRun(sheet, pick(sheet.runs, at), { chargedMol: { [pick(sheet.species, at)]: 0.01 } }),
@@ -93,5 +102,18 @@ describe('edits of a sheet', () => {
     expect(without.standards).toEqual([]);
     expect(without.stocks).toEqual([]);
     expect(removeSpecies(filled, 'core')).toBe(filled);
+  });
+
+  it('make one group of the scans given together, of absorbances only', () => {
+    const { absorbance: _, ...rest } = spectrum;
+    const given = { ...rest, molarAbsorptivity: [1, 2] };
+    const sheet = addNoiseScans(newSheet(), [spectrum, given, spectrum]);
+    expect(sheet.noiseScans).toMatchObject([{ id: 'scans1', spectra: [{}, {}] }]);
+    expect(addNoiseScans(newSheet(), [given])).toEqual(newSheet());
+    const two = addNoiseScans(sheet, [spectrum]);
+    expect(removeNoiseScans(two, 'scans1').noiseScans?.map(({ id }) => id)).toEqual(['scans2']);
+    expect(addNoiseScans(removeNoiseScans(two, 'scans1'), [spectrum]).noiseScans?.[1]?.id).toBe(
+      'scans1',
+    );
   });
 });

@@ -59,6 +59,28 @@ describe('exports that are taken in', () => {
   });
 });
 
+describe('scans that show the noise', () => {
+  it('are one group for each drop, as one step that can be undone', async () => {
+    await addExports([file('scans.csv', table('first', 'second', 'third'))], 'noise-scans');
+    await addExports([file('a.csv', table('a')), file('b.csv', table('b'))], 'noise-scans');
+    expect(sheet.value.noiseScans?.map(({ spectra }) => spectra.length)).toEqual([3, 2]);
+    undo();
+    expect(sheet.value.noiseScans).toHaveLength(1);
+    expect(sheet.value.aliquots ?? []).toEqual([]);
+  });
+
+  it('are absorbances: a molar absorptivity is left out by name', async () => {
+    const epsilon = [
+      'wavelength (nm),molar absorptivity (L/mol/cm)',
+      ...Array.from({ length: 5 }, (_, i) => `${240 + i},${1000 + i}`),
+    ].join('\n');
+    await addExports([file('epsilon.csv', epsilon)], 'noise-scans');
+    expect(sheet.value.noiseScans).toBeUndefined();
+    const refusal = notices.value.find(({ kind }) => kind === 'refusal');
+    expect(refusal?.details?.[0]).toContain('epsilon.csv');
+  });
+});
+
 describe('the species of a standard', () => {
   const named = (source: string, name: string) => ({
     name,
