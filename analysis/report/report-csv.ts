@@ -14,6 +14,11 @@ const headings = [
   'unit',
   'text',
 ] as const;
+const strayLightOrigins = {
+  none: 'not taken into account',
+  sheet: 'as stated',
+  fit: 'found by the fit',
+};
 type Row = Partial<Record<(typeof headings)[number], string | number | null>>;
 
 /**
@@ -90,6 +95,12 @@ function aliquotRows(result: AliquotResult): Row[] {
     { quantity: 'residual rms', value: fit.residualRms, unit: 'absorbance' },
     { quantity: 'reduced chi-square', value: fit.reducedChiSquare, unit: '1' },
     { quantity: 'wavelength offset', ...numbers(fit.shiftNm), unit: 'nm' },
+    {
+      quantity: 'stray light',
+      ...numbers(fit.strayLight),
+      unit: '1',
+      text: strayLightOrigins[fit.strayLight.from],
+    },
     ...fit.baseline.map(
       ({ term, absorbance }): Row => ({
         quantity: `baseline ${term}`,

@@ -81,8 +81,10 @@ function cells(quantity: Quantified, unit: ReadingUnit, isShown: boolean): [stri
   return isShown ? [value, interval] : ['—', interval.replace('below', 'less than')];
 }
 
+const noiseOrigins = { sheet: 'as given', scans: 'from the scans', spectrum: 'estimated' };
+
 function fitText({ fit }: AliquotResult): string {
-  const { noise, baseline, shiftNm } = fit;
+  const { noise, baseline, shiftNm, strayLight } = fit;
   const withUncertainty = (quantity: Quantified, unit: ReadingUnit, unitName: string): string => {
     const { value, uncertainty } = quantifiedText(quantity, { unit });
     return `${value} ${unitName} (u ${uncertainty})`;
@@ -93,7 +95,7 @@ function fitText({ fit }: AliquotResult): string {
     fit.reducedChiSquare === null
       ? 'reduced χ² not known, as the noise is known from this residual only'
       : `reduced χ² ${figuresText(fit.reducedChiSquare)}`,
-    `noise ${noise.from === 'sheet' ? 'as given' : 'estimated'}: ${figuresText(1000 * noise.constant)} mAU constant, ${figuresText(1000 * noise.transmittance)} mAU from transmittance`,
+    `noise ${noiseOrigins[noise.from]}: ${figuresText(1000 * noise.constant)} mAU constant, ${figuresText(1000 * noise.transmittance)} mAU from transmittance`,
     ...baseline.map(
       ({ term, absorbance }) =>
         `baseline ${term} ${withUncertainty(absorbance, 'milliabsorbance', 'mAU')}`,
@@ -101,6 +103,10 @@ function fitText({ fit }: AliquotResult): string {
     shiftNm.standardUncertainty === 0
       ? ''
       : `wavelength offset ${withUncertainty(shiftNm, 'plain', 'nm')}`,
+    strayLight.from === 'fit' ? `stray light ${withUncertainty(strayLight, 'percent', '%')}` : '',
+    strayLight.from === 'sheet' && strayLight.value !== null
+      ? `stray light as stated: ${givenText(100 * strayLight.value)} %`
+      : '',
   ];
   return `${parts.filter((part) => part !== '').join('; ')}.`;
 }

@@ -10,7 +10,7 @@ import { noiseOrigin, noiseText } from './noise-text.ts';
 
 /** How well the fit lies on the points, in figures. */
 export function FitFigures({ fit }: { readonly fit: AliquotResult['fit'] }) {
-  const { noise, shiftNm, baseline } = fit;
+  const { noise, shiftNm, baseline, strayLight } = fit;
   return (
     <dl class="figures">
       <dt>points</dt>
@@ -27,6 +27,16 @@ export function FitFigures({ fit }: { readonly fit: AliquotResult['fit'] }) {
           <dd>{withUncertainty(shiftNm, 'plain', 'nm')}</dd>
         </>
       )}
+      {strayLight.from !== 'none' && (
+        <>
+          <dt>stray light</dt>
+          <dd>
+            {strayLight.from === 'fit'
+              ? withUncertainty(strayLight, 'percent', '%')
+              : `${figuresText(100 * (strayLight.value ?? 0))} % (stated)`}
+          </dd>
+        </>
+      )}
       {baseline.map(({ term, absorbance }) => (
         <Fragment key={term}>
           <dt>baseline {term}</dt>
@@ -39,7 +49,7 @@ export function FitFigures({ fit }: { readonly fit: AliquotResult['fit'] }) {
 
 function withUncertainty(
   quantity: Quantified,
-  unit: 'plain' | 'milliabsorbance',
+  unit: 'plain' | 'percent' | 'milliabsorbance',
   name: string,
 ): string {
   const { value, uncertainty } = quantifiedText(quantity, { unit });
