@@ -117,7 +117,8 @@ export function FitFields({ sheet, change, low, high }: FitFieldsProps) {
 function ShiftPrior({ sheet, change }: Pick<SectionProps, 'sheet' | 'change'>) {
   return (
     <>
-      , known to{' '}
+      {' '}
+      scale known to{' '}
       <Field
         label="How well the wavelength scale is known, standard uncertainty, nm"
         title="Standard uncertainty with which crude and standards agree in wavelength before the fit; left empty, the offset is free, which widens the interval"

@@ -36,7 +36,7 @@ export function NoiseScans({ sheet, change }: Pick<SectionProps, 'sheet' | 'chan
         what={
           groups.length > 0
             ? 'scans of another cuvette'
-            : 'repeated scans of one cuvette, or blanks,'
+            : 'repeated scans of a cuvette with a solution in it, or blanks,'
         }
       />
     </div>
