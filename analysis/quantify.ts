@@ -17,6 +17,7 @@ import { ratiosOf, splitOf } from './split/fractions.ts';
 import type { AliquotCurves, AliquotResult, Quantification } from './split/results.ts';
 import { runResult } from './split/runs.ts';
 import { type StandardsLibrary, standardsLibrary } from './standards/library.ts';
+import { noiseOfScans } from './standards/noise-scans.ts';
 import type { SpeciesStandard } from './standards/species-standard.ts';
 import { pointUse } from './unmixing/choose-points.ts';
 import { commonEffects, errorSources } from './unmixing/error-sources.ts';
@@ -66,14 +67,35 @@ export function quantify(sheet: Sheet, readings: ReadonlyMap<string, Reading>): 
 /** A sheet with its standards made ready: what all its aliquots share. */
 export interface PreparedSheet {
   readonly sheet: Sheet;
+  /** As the sheet has them, with the noise of its repeated scans where it states none. */
   readonly settings: FitSettings;
   readonly library: StandardsLibrary;
+  /** The library with this fraction of stray light taken out of every standard. */
+  readonly libraryAt: (strayLight: number) => StandardsLibrary;
 }
 
 export function prepare(sheet: Sheet, readings: ReadonlyMap<string, Reading>): PreparedSheet {
-  const settings = fitSettings(sheet);
-  return { sheet, settings, library: standardsLibrary(sheet, readings, settings) };
+  const stated = fitSettings(sheet);
+  const scans = noiseOfScans(sheet, readings);
+  const settings: FitSettings =
+    scans && !stated.noise ? { ...stated, noise: scans.model, noiseFrom: 'scans' } : stated;
+  const libraries = new Map<number, StandardsLibrary>();
+  const libraryAt = (strayLight: number): StandardsLibrary => {
+    const known = libraries.get(strayLight);
+    if (known) return known;
+    const made = standardsLibrary(sheet, readings, settings, {
+      strayLight,
+      scans: scans?.samples ?? [],
+    });
+    if (libraries.size < mostLibraries) libraries.set(strayLight, made);
+    return made;
+  };
+  const strayLight = settings.strayLight === 'fit' ? 0 : settings.strayLight;
+  return { sheet, settings, library: libraryAt(strayLight), libraryAt };
 }
+
+/** A fit of stray light tries a handful for each aliquot. */
+const mostLibraries = 100;
 
 export interface QuantifiedAliquot {
   readonly result: AliquotResult;
@@ -89,11 +111,17 @@ export function quantifyAliquot(
 ): QuantifiedAliquot {
   const { sheet, settings, library } = prepared;
   const what = `aliquot ${aliquot.id}`;
-  const standards = library.standards;
   const crude = resolveSpectrum(aliquot.spectrum, readings, 'absorbance', what);
   const pathLengthCm = aliquot.pathLengthCm ?? 1;
-  const unmixing = unmix({ crude, standards, pathLengthCm, settings, what });
-  const sources = errorSources(unmixing, standards);
+  const unmixing = unmix({
+    crude,
+    standardsAt: (strayLight) => prepared.libraryAt(strayLight).standards,
+    noiseSamples: library.noiseSamples,
+    pathLengthCm,
+    settings,
+    what,
+  });
+  const sources = errorSources(unmixing, { levelSeen: library.noiseLevelSeen });
   const estimate = estimateOf(unmixing, sources);
   const products = productPositions(prepared);
   const dilution = dilutionOf(aliquot);
@@ -101,7 +129,6 @@ export function quantifyAliquot(
   const doubts = allDoubts({
     crude,
     unmixing,
-    standards,
     sources,
     settings,
     amounts: amountEvidence(concentrations),

@@ -1,6 +1,5 @@
 import type { FitSettings } from '../sheet/defaults.ts';
 import type { Spectrum } from '../spectrum/spectrum.ts';
-import type { SpeciesStandard } from '../standards/species-standard.ts';
 import type { ErrorSources } from '../unmixing/error-sources.ts';
 import type { Unmixing } from '../unmixing/unmix.ts';
 import type { Doubt } from './doubt.ts';
@@ -9,7 +8,6 @@ import type { Doubt } from './doubt.ts';
 export interface Evidence {
   readonly crude: Spectrum;
   readonly unmixing: Unmixing;
-  readonly standards: readonly SpeciesStandard[];
   readonly sources: ErrorSources;
   readonly settings: FitSettings;
   /** What the split says of each species, in the order of the unmixing. */

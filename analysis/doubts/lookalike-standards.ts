@@ -1,3 +1,4 @@
+import { takesPart } from '../unmixing/error-sources.ts';
 import type { Doubt } from './doubt.ts';
 import type { DoubtTest, Evidence } from './evidence.ts';
 import { percentText, twoFigures } from './wording.ts';
@@ -27,7 +28,7 @@ function pairDoubt({ unmixing, sources, nameOf }: Evidence, k: number, l: number
   const pair = drawn[k]! + drawn[l]!;
   const all = drawn.reduce((sum, amount) => sum + amount, 0);
   if (pair < pairOfNote * all) return [];
-  const unseen = fit.unseen.some((direction) => direction[k] !== 0 && direction[l] !== 0);
+  const unseen = fit.unseen.some((direction) => [k, l].every((m) => takesPart(direction, m)));
   const inflation = unseen ? Number.POSITIVE_INFINITY : inflationOf(sources.points, k, l);
   const share = unseen ? 1 : shareUncertainty(sources.points, drawn, k, l);
   if (inflation < inflationOfNote || share < shareOfNote) return [];

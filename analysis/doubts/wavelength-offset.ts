@@ -1,7 +1,7 @@
-import { shiftSlope, standardsVariance } from '../unmixing/standards-on-points.ts';
-import { weightedFit } from '../unmixing/weighted-fit.ts';
+import { correlate } from '../spectrum/correlated-noise.ts';
+import { dot, orthonormal, projectedOut } from '../spectrum/vectors.ts';
+import { shiftSlope } from '../unmixing/standards-on-points.ts';
 import type { DoubtTest, Evidence } from './evidence.ts';
-import { strongestBand } from './unexplained-band.ts';
 import { twoFigures } from './wording.ts';
 
 /** Two-sided; far out, because the noise of the standards leans on the slope too. */
@@ -20,8 +20,8 @@ export const wavelengthOffset: DoubtTest = (evidence) => {
   const { shiftNm, sd, z } = scoreOf(evidence);
   if (!(Math.abs(shiftNm) > Math.max(limit * sd, smallestOfNote))) return [];
   // a missing species leans on the slope too: where a band explains more, it is the band
-  const band = strongestBand(evidence);
-  if (band && Math.abs(band.againstNoise) > Math.abs(z)) return [];
+  const { band } = evidence.unmixing;
+  if (band && Math.abs(band.z) > Math.abs(z)) return [];
   return [
     {
       code: 'wavelength-offset',
@@ -35,25 +35,24 @@ export const wavelengthOffset: DoubtTest = (evidence) => {
 
 interface Score {
   readonly shiftNm: number;
-  /** With lack of fit. */
   readonly sd: number;
-  /** Against the noise alone, as a band's z is. */
+  /** Against independent noise, as a band's z is. */
   readonly z: number;
 }
 
-function scoreOf({ crude, unmixing }: Evidence): Score {
-  const { fit, at, pathLengthCm, molarAbsorptivity, noise, excess } = unmixing;
+/** One Gauss-Newton step from no offset, with the noise's correlation and level in its uncertainty. */
+function scoreOf({ unmixing }: Evidence): Score {
+  const { fit, at, pathLengthCm, molarAbsorptivity, correlation, instrumentLevel } = unmixing;
   const sd = fit.variance.map(Math.sqrt);
-  const columns = fit.whitened.map((column) => column.map((value, i) => value * sd[i]!));
   const slope = shiftSlope(molarAbsorptivity, at, pathLengthCm, fit.parameters);
-  const measured = Float64Array.from(at, (i) => crude.values[i]!);
-  const free = weightedFit([...columns, slope], measured, noise, (parameters) =>
-    standardsVariance(molarAbsorptivity, at, pathLengthCm, parameters),
-  );
-  const gain = free.gain.at(-1) ?? new Float64Array();
-  const shiftNm = free.parameters.at(-1) ?? 0;
-  const variance = gain.reduce((sum, value, i) => sum + value * value * free.variance[i]!, 0);
-  const lack =
-    unmixing.df === Number.POSITIVE_INFINITY ? 1 : Math.min(excess, free.reducedChiSquare);
-  return { shiftNm, sd: Math.sqrt(variance * Math.max(lack, 1)), z: shiftNm / Math.sqrt(variance) };
+  const whitened = slope.map((value, i) => value / sd[i]!);
+  const rest = projectedOut(orthonormal(fit.whitened), whitened);
+  const squares = dot(rest, rest);
+  const shiftNm =
+    dot(
+      rest,
+      fit.residual.map((value, i) => value / sd[i]!),
+    ) / squares;
+  const variance = (instrumentLevel * dot(rest, correlate(correlation.rho, rest))) / squares ** 2;
+  return { shiftNm, sd: Math.sqrt(variance), z: shiftNm * Math.sqrt(squares) };
 }

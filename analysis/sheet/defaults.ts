@@ -13,6 +13,7 @@ export interface FitSettings {
   readonly strayLight: number | 'fit';
   readonly upperAbsorbance: number;
   readonly noise: { readonly constant: number; readonly transmittance: number } | null;
+  readonly noiseFrom: 'sheet' | 'scans' | 'spectrum';
 }
 
 export function fitSettings(sheet: Sheet): FitSettings {
@@ -26,6 +27,7 @@ export function fitSettings(sheet: Sheet): FitSettings {
     strayLight: fit.strayLight ?? 0,
     upperAbsorbance: fit.upperAbsorbance ?? 2,
     noise: fit.noise ?? null,
+    noiseFrom: fit.noise ? 'sheet' : 'spectrum',
   };
 }
 

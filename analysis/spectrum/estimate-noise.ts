@@ -15,28 +15,31 @@ const medianToSd = 1.482602218505602;
  * settled is used. The scale is a median, so that spikes do not count, taken in bins of
  * absorbance to part the constant noise from that of transmittance.
  *
- * Null where there are too few points to tell. Correlated noise (smoothing instruments) is
- * under-estimated; the fit's own residual is what guards the intervals against that.
+ * Null where there are too few points to tell. Noise that is correlated from point to point
+ * (smoothing, oversampling) shows too little in differences: the proportions of the two parts are
+ * right, their level is set by who knows a residual (`levelOf` in correlated-noise.ts).
  *
  * @param values absorbance, or the residual of a fit; NaN where missing; same length as `wavelengthNm`
  * @param level absorbance at which each point was read; the values themselves unless given
  * @param rounding standard deviation of rounding to the printed digits, below which no noise is believed
+ * @param known variance at each point that is not this spectrum's noise (the standards' part of a residual)
  */
 export function estimateNoise(
   wavelengthNm: Float64Array,
   values: Float64Array,
   level: Float64Array = values,
   rounding: number = roundingSd(values),
+  known?: Float64Array,
 ): NoiseModel | null {
   const floor = Math.max(noiseFloor, rounding);
   let settled: Prediction | null = null;
   for (const reach of reaches) {
-    const next = predictionErrors({ wavelengthNm, values, level }, reach, floor);
+    const next = predictionErrors({ wavelengthNm, values, level, known }, reach, floor);
     if (next.errors.length < smallestSample) break;
     if (settled && next.scale > 0.9 * settled.scale) break;
     settled = next;
   }
-  return settled && twoParts(settled, floor);
+  return settled && twoParts(levelsInBins(settled, floor), floor);
 }
 
 interface Prediction {
@@ -44,6 +47,8 @@ interface Prediction {
   readonly errors: Float64Array;
   /** Absorbance of the same points. */
   readonly at: Float64Array;
+  /** Known variance at the same points. */
+  readonly known: Float64Array;
   readonly scale: number;
 }
 
@@ -51,6 +56,7 @@ interface Readings {
   readonly wavelengthNm: Float64Array;
   readonly values: Float64Array;
   readonly level: Float64Array;
+  readonly known: Float64Array | undefined;
 }
 
 /**
@@ -69,22 +75,25 @@ export function roundingSd(values: Float64Array): number {
 }
 
 function predictionErrors(
-  { wavelengthNm, values, level }: Readings,
+  { wavelengthNm, values, level, known }: Readings,
   reach: number,
   floor: number,
 ): Prediction {
   const errors: number[] = [];
   const at: number[] = [];
+  const knownThere: number[] = [];
   for (let i = reach; i < wavelengthNm.length - reach; i++) {
     const error = predictionError(wavelengthNm, values, i, reach);
     if (Number.isNaN(error)) continue;
     errors.push(error);
     at.push(level[i]!);
+    knownThere.push(known?.[i] ?? 0);
   }
   const sizes = Float64Array.from(errors, Math.abs);
   return {
     errors: Float64Array.from(errors),
     at: Float64Array.from(at),
+    known: Float64Array.from(knownThere),
     scale: sizes.length > 0 ? Math.max(medianToSd * xMedian(sizes), floor) : floor,
   };
 }
@@ -104,40 +113,113 @@ function predictionError(x: Float64Array, y: Float64Array, i: number, reach: num
   return (y[i]! - predicted) / Math.sqrt(sumOfSquares);
 }
 
-/** σ² = constant² + transmittance²·10^2A through the bins, both parts non-negative. */
-function twoParts({ errors, at }: Prediction, floor: number): NoiseModel {
+/** Variance found in one stretch: what is expected there is constant²·flat + transmittance²·rise. */
+export interface NoiseLevelAt {
+  readonly variance: number;
+  /** 1 for one reading. */
+  readonly flat: number;
+  /** Mean of 10^2A for one reading. */
+  readonly rise: number;
+  readonly points: number;
+}
+
+/** Medians of the prediction errors in bins of absorbance, what is known to be another's taken off. */
+function levelsInBins({ errors, at, known }: Prediction, floor: number): NoiseLevelAt[] {
   const order = Array.from(at.keys()).sort((a, b) => at[a]! - at[b]!);
   const bins = Math.min(mostBins, Math.floor(order.length / smallestSample));
-  let s11 = 0;
-  let s12 = 0;
-  let s22 = 0;
-  let s1y = 0;
-  let s2y = 0;
-  for (let bin = 0; bin < bins; bin++) {
+  return Array.from({ length: bins }, (_, bin) => {
     const members = order.slice(
       Math.floor((bin * order.length) / bins),
       Math.floor(((bin + 1) * order.length) / bins),
     );
     const sd = medianToSd * xMedian(Float64Array.from(members, (i) => Math.abs(errors[i]!)));
     const rise = xMedian(Float64Array.from(members, (i) => 100 ** at[i]!));
-    const variance = Math.max(sd, floor) ** 2;
-    // a variance is known in proportion to itself
-    const weight = members.length / variance ** 2;
-    s11 += weight;
-    s12 += weight * rise;
+    const total = Math.max(sd, floor) ** 2;
+    const elsewhere = members.reduce((sum, i) => sum + known[i]!, 0) / members.length;
+    // what is not noise of this spectrum may be mistaken too: a tenth of it all is left to noise
+    const variance = Math.max(total - elsewhere, 0.1 * total);
+    return { variance, flat: 1, rise, points: members.length };
+  });
+}
+
+/**
+ * σ² = constant² + transmittance²·10^2A through the levels found, both parts non-negative. A variance
+ * is known in proportion to itself, and to what is fitted rather than to what was found (a stretch
+ * that happens to be quiet would count too much): a few rounds of weights.
+ */
+export function twoParts(levels: readonly NoiseLevelAt[], floor: number): NoiseModel {
+  const least = Math.max(floor, noiseFloor) ** 2;
+  let weights = levels.map(({ variance, points }) => points / Math.max(variance, least) ** 2);
+  let parts = nonNegativeLine(levels, weights);
+  for (let round = 0; round < 5; round++) {
+    weights = levels.map(
+      ({ flat, rise, points }) =>
+        points / Math.max(parts.constant * flat + parts.transmittance * rise, least * flat) ** 2,
+    );
+    parts = nonNegativeLine(levels, weights);
+  }
+  return { constant: Math.sqrt(parts.constant), transmittance: Math.sqrt(parts.transmittance) };
+}
+
+/** Weighted least squares of variance on flat and rise with neither coefficient negative. */
+function nonNegativeLine(
+  levels: readonly NoiseLevelAt[],
+  weights: readonly number[],
+): { constant: number; transmittance: number } {
+  let [s11, s12, s22, s1y, s2y] = [0, 0, 0, 0, 0];
+  for (const [index, { variance, flat, rise }] of levels.entries()) {
+    const weight = weights[index]!;
+    s11 += weight * flat * flat;
+    s12 += weight * flat * rise;
     s22 += weight * rise * rise;
-    s1y += weight * variance;
+    s1y += weight * flat * variance;
     s2y += weight * rise * variance;
   }
   const determinant = s11 * s22 - s12 * s12;
-  let constant = determinant > 1e-9 * s11 * s22 ? (s1y * s22 - s2y * s12) / determinant : s1y / s11;
-  let transmittance = determinant > 1e-9 * s11 * s22 ? (s11 * s2y - s12 * s1y) / determinant : 0;
-  if (transmittance < 0) {
-    transmittance = 0;
-    constant = s1y / s11;
-  } else if (constant < 0) {
-    constant = 0;
-    transmittance = s2y / s22;
+  const constantAlone = { constant: Math.max(s1y / s11, 0), transmittance: 0 };
+  if (!(determinant > 1e-9 * s11 * s22)) return constantAlone;
+  const constant = (s1y * s22 - s2y * s12) / determinant;
+  const transmittance = (s11 * s2y - s12 * s1y) / determinant;
+  if (transmittance < 0) return constantAlone;
+  if (constant < 0) return { constant: 0, transmittance: Math.max(s2y / s22, 0) };
+  return { constant, transmittance };
+}
+
+/** Points that are taken together where a level is read from squares. */
+const stretch = 8;
+
+/**
+ * Levels from a residual: mean squares over short stretches. Unlike differences they see all of a
+ * noise that is correlated from point to point.
+ *
+ * @param residual absorbance (or any unit; then flat and rise in its square); NaN where there is none
+ * @param expected what one unit of constant² and of transmittance² gives at each point
+ * @param kept share of the noise that the fit has left in the residual
+ * @param known variance at each point that is not this noise
+ */
+export function levelsOfSquares(
+  residual: Float64Array,
+  expected: { readonly flat: Float64Array; readonly rise: Float64Array },
+  kept: number,
+  known?: Float64Array,
+): NoiseLevelAt[] {
+  const found: NoiseLevelAt[] = [];
+  let [squares, flat, rise, elsewhere, points] = [0, 0, 0, 0, 0];
+  for (const [i, value] of residual.entries()) {
+    if (Number.isNaN(value)) continue;
+    squares += (value * value) / kept;
+    flat += expected.flat[i]!;
+    rise += expected.rise[i]!;
+    elsewhere += known?.[i] ?? 0;
+    points++;
+    if (points < stretch) continue;
+    found.push({
+      variance: (squares - elsewhere) / points,
+      flat: flat / points,
+      rise: rise / points,
+      points,
+    });
+    [squares, flat, rise, elsewhere, points] = [0, 0, 0, 0, 0];
   }
-  return { constant: Math.sqrt(constant), transmittance: Math.sqrt(transmittance) };
+  return found;
 }

@@ -37,7 +37,8 @@ export function amountEvidence(concentrations: readonly ConcentrationResult[]): 
 
 /** The figures of the fit. */
 export function fitResult(unmixing: Unmixing, wavelengthNm: Float64Array): FitResult {
-  const { at, fit, noise, noiseFrom, baseline, shiftNm, reducedChiSquare, df } = unmixing;
+  const { at, fit, noise, noiseFrom, baseline, shiftNm, strayLight, reducedChiSquare, df } =
+    unmixing;
   const squares = fit.residual.reduce((sum, value) => sum + value * value, 0);
   return {
     points: at.length,
@@ -52,6 +53,10 @@ export function fitResult(unmixing: Unmixing, wavelengthNm: Float64Array): FitRe
         absorbance: symmetric(value, sd, df),
       }),
     ),
+    strayLight: {
+      ...symmetric(strayLight.value, strayLight.sd, df),
+      from: strayLight.sd > 0 ? 'fit' : strayLight.value > 0 ? 'sheet' : 'none',
+    },
     noise: { ...noise, from: noiseFrom },
   };
 }

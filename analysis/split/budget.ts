@@ -1,6 +1,10 @@
+import { correlate } from '../spectrum/correlated-noise.ts';
+import { dot } from '../spectrum/vectors.ts';
 import type { ErrorSources } from '../unmixing/error-sources.ts';
+import { spreadOut } from '../unmixing/noise-of-fit.ts';
 import { factorise } from '../unmixing/orthogonal.ts';
 import type { Unmixing } from '../unmixing/unmix.ts';
+import { withPriors } from '../unmixing/weighted-fit.ts';
 import { quadratic } from './amounts.ts';
 import { fractionGradient } from './fractions.ts';
 import type { BudgetShare } from './results.ts';
@@ -37,37 +41,49 @@ interface Part {
 }
 
 function pointParts(unmixing: Unmixing, gradient: Float64Array): Part[] {
-  const { fit, baseline, species, excess } = unmixing;
-  const columns = fit.whitened;
+  const { baseline, species, instrumentLevel, excess, shiftNm } = unmixing;
   const size = species.length;
-  const all = noiseVariance(unmixing, columns, gradient);
-  const withBaseline = noiseVariance(unmixing, columns.slice(0, size + baseline.length), gradient);
-  const alone = noiseVariance(unmixing, columns.slice(0, size), gradient);
+  const alone = noiseVariance(unmixing, size, gradient);
+  const withBaseline = noiseVariance(unmixing, size + baseline.length, gradient);
+  const shifts = shiftNm.sd > 0 ? 1 : 0;
+  const withShift =
+    shifts === 1
+      ? noiseVariance(unmixing, size + baseline.length + shifts, gradient)
+      : withBaseline;
+  const all = noiseVariance(unmixing, unmixing.fit.whitened.length, gradient);
+  const more = (variance: number, than: number) => instrumentLevel * Math.max(variance - than, 0);
   return [
-    { source: 'photometric noise', variance: alone * Math.min(excess, 1) },
-    { source: 'baseline', variance: Math.max(withBaseline - alone, 0) * Math.min(excess, 1) },
-    {
-      source: 'wavelength offset',
-      variance: Math.max(all - withBaseline, 0) * Math.min(excess, 1),
-    },
-    { source: 'lack of fit', variance: all * Math.max(excess - 1, 0) },
+    { source: 'photometric noise', variance: instrumentLevel * alone },
+    { source: 'baseline', variance: more(withBaseline, alone) },
+    { source: 'wavelength offset', variance: more(withShift, withBaseline) },
+    { source: 'stray light', variance: more(all, withShift) },
+    { source: 'lack of fit', variance: all * Math.max(excess - instrumentLevel, 0) },
   ];
 }
 
-/** Variance of the fraction from photometric noise if only these whitened columns were fitted. */
+/** Variance of the fraction from photometric noise of unit level if only these first columns were fitted. */
 function noiseVariance(
-  { fit, species }: Unmixing,
-  whitened: readonly Float64Array[],
+  { fit, species, at, correlation }: Unmixing,
+  columns: number,
   gradient: Float64Array,
 ): number {
-  const rows = factorise(whitened).pseudoInverse();
-  let sum = 0;
-  for (const [i, variance] of fit.variance.entries()) {
-    let gain = 0;
-    for (let k = 0; k < species.length; k++) gain += gradient[k]! * rows[k]![i]!;
-    sum += gain * gain * (fit.noiseVariance[i]! / variance);
+  const priors = fit.priors.filter(({ parameter }) => parameter < columns);
+  const rows = factorise(withPriors(fit.whitened.slice(0, columns), priors)).pseudoInverse();
+  const points = fit.variance.length;
+  const gain = new Float64Array(points);
+  let fromPriors = 0;
+  for (let k = 0; k < species.length; k++) {
+    const row = rows[k]!;
+    for (let i = 0; i < points; i++) {
+      gain[i]! += gradient[k]! * row[i]! * Math.sqrt(fit.noiseVariance[i]! / fit.variance[i]!);
+    }
   }
-  return sum;
+  for (let m = points; m < points + priors.length; m++) {
+    fromPriors +=
+      rows.slice(0, species.length).reduce((sum, row, k) => sum + gradient[k]! * row[m]!, 0) ** 2;
+  }
+  const spread = spreadOut(at, gain);
+  return dot(spread, correlate(correlation.rho, spread)) + fromPriors;
 }
 
 function standardsParts({ scale, standardsNoise }: ErrorSources, gradient: Float64Array): Part[] {

@@ -53,11 +53,13 @@ export interface FitResult {
   readonly reducedChiSquare: number | null;
   readonly shiftNm: Quantified;
   readonly baseline: readonly BaselineTerm[];
+  /** Fraction of the light in the reference beam that was taken out, and where it is from. */
+  readonly strayLight: Quantified & { readonly from: 'none' | 'sheet' | 'fit' };
   /** Noise model used: absorbance units, and transmittance units. */
   readonly noise: {
     readonly constant: number;
     readonly transmittance: number;
-    readonly from: 'sheet' | 'spectrum';
+    readonly from: 'sheet' | 'scans' | 'spectrum';
   };
 }
 

@@ -3,6 +3,7 @@ import type { Sheet, SheetStandard } from '../sheet/schema.ts';
 import { estimateNoise } from '../spectrum/estimate-noise.ts';
 import { absorbanceVariance, type NoiseModel, noiseFloor } from '../spectrum/noise.ts';
 import type { Spectrum } from '../spectrum/spectrum.ts';
+import { withoutStrayLight } from '../spectrum/stray-light.ts';
 
 /** An error common to a whole spectrum: "stock mono-A", "dilution of S1". */
 export interface ScaleError {
@@ -23,6 +24,8 @@ export interface Solution {
   /** 1 where the point may be used: there, and not above the upper absorbance. */
   readonly usable: Uint8Array;
   readonly scaleErrors: readonly ScaleError[];
+  /** Path length times concentration, cm mol L⁻¹: absorbance over ε; null for a molar absorptivity spectrum. */
+  readonly absorbancePerEpsilon: number | null;
   /** Largest absorbance that was used; null for a molar absorptivity spectrum. */
   readonly largestAbsorbance: number | null;
 }
@@ -30,12 +33,17 @@ export interface Solution {
 /** A relative noise this small is taken where a molar absorptivity spectrum is too short to tell. */
 const shortSpectrumRelativeNoise = 1e-3;
 
-/** ε = A / (b c), with the noise of A carried along and the errors common to the spectrum named. */
+/**
+ * ε = A / (b c), the stray light taken out of A, with the noise of A carried along and the errors common to the spectrum named.
+ *
+ * @param strayLight fraction of the light in the reference beam
+ */
 export function solutionOf(
   sheet: Sheet,
   standard: SheetStandard,
   spectrum: Spectrum,
   settings: FitSettings,
+  strayLight = 0,
 ): Solution {
   const scaleErrors = scaleErrorsOf(sheet, standard);
   const shared = {
@@ -46,7 +54,7 @@ export function solutionOf(
   };
   return standard.kind === 'molar-absorptivity'
     ? { ...shared, ...givenAsEpsilon(spectrum) }
-    : { ...shared, ...fromAbsorbance(standard, spectrum, settings) };
+    : { ...shared, ...fromAbsorbance(standard, spectrum, settings, strayLight) };
 }
 
 function scaleErrorsOf(sheet: Sheet, standard: SheetStandard): ScaleError[] {
@@ -62,12 +70,16 @@ function scaleErrorsOf(sheet: Sheet, standard: SheetStandard): ScaleError[] {
   return [own, { source: `stock ${stock.id}`, relative: stock.relativeStandardUncertainty ?? 0 }];
 }
 
-type Measured = Pick<Solution, 'epsilon' | 'sd' | 'usable' | 'largestAbsorbance'>;
+type Measured = Pick<
+  Solution,
+  'epsilon' | 'sd' | 'usable' | 'largestAbsorbance' | 'absorbancePerEpsilon'
+>;
 
 function fromAbsorbance(
   standard: SheetStandard,
   { wavelengthNm, values }: Spectrum,
   settings: FitSettings,
+  strayLight: number,
 ): Measured {
   const scale = (standard.pathLengthCm ?? 1) * (standard.concentrationMolPerL ?? Number.NaN);
   const noise = settings.noise ?? estimateNoise(wavelengthNm, values) ?? shortSpectrumNoise(values);
@@ -75,14 +87,16 @@ function fromAbsorbance(
   const sd = new Float64Array(values.length);
   const usable = new Uint8Array(values.length);
   let largestAbsorbance = 0;
-  for (const [i, absorbance] of values.entries()) {
-    if (!(absorbance <= settings.upperAbsorbance)) continue;
+  for (const [i, reading] of values.entries()) {
+    if (!(reading <= settings.upperAbsorbance)) continue;
+    const absorbance = withoutStrayLight(reading, strayLight);
+    if (Number.isNaN(absorbance)) continue;
     usable[i] = 1;
     epsilon[i] = absorbance / scale;
     sd[i] = Math.sqrt(absorbanceVariance(noise, absorbance)) / scale;
     if (absorbance > largestAbsorbance) largestAbsorbance = absorbance;
   }
-  return { epsilon, sd, usable, largestAbsorbance };
+  return { epsilon, sd, usable, largestAbsorbance, absorbancePerEpsilon: scale };
 }
 
 function givenAsEpsilon({ wavelengthNm, values }: Spectrum): Measured {
@@ -99,6 +113,7 @@ function givenAsEpsilon({ wavelengthNm, values }: Spectrum): Measured {
     sd: new Float64Array(values.length).fill(noise * largest),
     usable: Uint8Array.from(values, (value) => (Number.isNaN(value) ? 0 : 1)),
     largestAbsorbance: null,
+    absorbancePerEpsilon: null,
   };
 }
 

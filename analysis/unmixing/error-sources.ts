@@ -1,6 +1,6 @@
+import { smoothed } from '../spectrum/correlated-noise.ts';
 import { stencil } from '../spectrum/interpolate.ts';
 import type { MolarAbsorptivity } from '../standards/molar-absorptivity.ts';
-import type { SpeciesStandard } from '../standards/species-standard.ts';
 import type { Unmixing } from './unmix.ts';
 
 /**
@@ -22,14 +22,18 @@ export interface ErrorSources {
   }[];
 }
 
-export function errorSources(
-  unmixing: Unmixing,
-  standards: readonly SpeciesStandard[],
-): ErrorSources {
-  const { amounts, fit, excess } = unmixing;
+/** How the noise of the standards is known. */
+export interface StandardsNoise {
+  readonly levelSeen: boolean;
+}
+
+/** @param levelSeen true where the standards' noise has been set by what their solutions show */
+export function errorSources(unmixing: Unmixing, { levelSeen }: StandardsNoise): ErrorSources {
+  const { amounts, covariance, standards } = unmixing;
   const size = amounts.length;
+  const level = levelSeen ? 1 : Math.sqrt(unmixing.instrumentLevel);
   return {
-    points: pointCovariance(fit.gain.slice(0, size), fit.noiseVariance, excess),
+    points: covariance.slice(0, size).map((row) => row.slice(0, size)),
     unseen: unseenCovariance(unmixing),
     scale: standards.flatMap(({ scaleErrors }, k) =>
       scaleErrors.map(({ source, relative }) => {
@@ -41,25 +45,10 @@ export function errorSources(
     standardsNoise: standards.flatMap((standard, k) =>
       standard.solutions.map((solution, s) => ({
         standard: solution.standard,
-        effects: standardNoiseEffects(unmixing, k, s),
+        effects: standardNoiseEffects(unmixing, k, s, level),
       })),
     ),
   };
-}
-
-/** gain · diag(variance) · gainᵀ · factor. */
-export function pointCovariance(
-  gain: readonly Float64Array[],
-  variance: Float64Array,
-  factor: number,
-): Float64Array[] {
-  return gain.map((a) =>
-    Float64Array.from(gain, (b) => {
-      let sum = 0;
-      for (let i = 0; i < variance.length; i++) sum += a[i]! * b[i]! * variance[i]!;
-      return factor * sum;
-    }),
-  );
 }
 
 /** What an aliquot has for itself: noise, lack of fit, and what the data do not see. */
@@ -99,10 +88,11 @@ function standardNoiseEffects(
   unmixing: Unmixing,
   species: number,
   solution: number,
+  level: number,
 ): Float64Array[] {
-  const { fit, at, amounts, pathLengthCm, molarAbsorptivity } = unmixing;
+  const { fit, at, amounts, pathLengthCm, molarAbsorptivity, correlation } = unmixing;
   const part = partOf(molarAbsorptivity, species, solution);
-  const strength = -pathLengthCm * Math.max(amounts[species]!, 0);
+  const strength = -level * pathLengthCm * Math.max(amounts[species]!, 0);
   return fit.gain.slice(0, amounts.length).map((gain) => {
     const effect = new Float64Array(part.sd.length);
     for (const [j, i] of at.entries()) {
@@ -113,7 +103,10 @@ function standardNoiseEffects(
         effect[part.map.index[m]!]! += size * part.map.weight[m]!;
       }
     }
-    return effect.map((value, j) => value * part.sd[j]!);
+    return smoothed(
+      correlation.kernel,
+      effect.map((value, j) => value * part.sd[j]!),
+    );
   });
 }
 
@@ -134,11 +127,11 @@ function partOf(
 function unseenCovariance({ fit, amounts, drawn }: Unmixing): Float64Array[] {
   const covariance = Array.from(amounts, () => new Float64Array(amounts.length));
   for (const direction of fit.unseen) {
-    let largest = 0;
-    let held = 0;
+    let [largest, held] = [0, 0];
     for (const k of amounts.keys()) {
+      if (!takesPart(direction, k)) continue;
       largest = Math.max(largest, Math.abs(direction[k]!));
-      if (direction[k] !== 0) held += Math.abs(drawn[k]!);
+      held += Math.abs(drawn[k]!);
     }
     if (largest === 0) continue;
     for (const [k, row] of covariance.entries()) {
@@ -148,6 +141,12 @@ function unseenCovariance({ fit, amounts, drawn }: Unmixing): Float64Array[] {
     }
   }
   return covariance;
+}
+
+/** Whether a parameter belongs to a direction that is not seen, and not by rounding alone. */
+export function takesPart(direction: Float64Array, parameter: number): boolean {
+  const largest = direction.reduce((most, value) => Math.max(most, Math.abs(value)), 0);
+  return Math.abs(direction[parameter]!) > 1e-3 * largest;
 }
 
 function sumOf(matrices: readonly (readonly Float64Array[])[]): Float64Array[] {

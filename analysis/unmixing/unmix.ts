@@ -1,35 +1,51 @@
-import { chiSquareQuantile } from '../distributions/chi-square.ts';
 import { Refusal } from '../refusal.ts';
 import type { FitSettings } from '../sheet/defaults.ts';
-import { estimateNoise, roundingSd } from '../spectrum/estimate-noise.ts';
+import type { NoiseCorrelation } from '../spectrum/correlated-noise.ts';
+import {
+  estimateNoise,
+  levelsOfSquares,
+  roundingSd,
+  twoParts,
+} from '../spectrum/estimate-noise.ts';
 import type { NoiseModel } from '../spectrum/noise.ts';
 import type { Spectrum } from '../spectrum/spectrum.ts';
+import { withoutStrayLight } from '../spectrum/stray-light.ts';
+import type { SampledNoise } from '../standards/contrasts.ts';
 import { type MolarAbsorptivity, molarAbsorptivityAt } from '../standards/molar-absorptivity.ts';
 import type { SpeciesStandard } from '../standards/species-standard.ts';
 import { choosePoints, pointUse, usedPoints } from './choose-points.ts';
 import { type BaselineName, type Design, designOf } from './design.ts';
+import { fitInstrument, type InstrumentError, type LinearModel } from './instrument-fit.ts';
+import { cleanedResidual, type FoundBand, noiseOfFit } from './noise-of-fit.ts';
 import { nonNegativeLeastSquares } from './non-negative.ts';
-import { fitShift, largestShiftNm } from './shift.ts';
+import { pointCovariance } from './point-covariance.ts';
 import { shiftSlope, standardsVariance } from './standards-on-points.ts';
-import { type WeightedFit, weightedFit } from './weighted-fit.ts';
+import { modelled, type WeightedFit, weightedFit } from './weighted-fit.ts';
 
 export interface UnmixInput {
   readonly crude: Spectrum;
-  readonly standards: readonly SpeciesStandard[];
+  /** The standards with this fraction of stray light taken out of them. */
+  readonly standardsAt: (strayLight: number) => readonly SpeciesStandard[];
+  /** Noise that other measurements of the sheet show. */
+  readonly noiseSamples: readonly SampledNoise[];
   readonly pathLengthCm: number;
   readonly settings: FitSettings;
   /** For the message of a refusal: "aliquot a1". */
   readonly what: string;
 }
 
-/** One crude spectrum taken apart. Species are in the order of `input.standards`. */
+/** One crude spectrum taken apart. Species are in the order of the standards. */
 export interface Unmixing {
   readonly species: readonly string[];
+  /** The standards as they were used, the stray light of the fit taken out. */
+  readonly standards: readonly SpeciesStandard[];
   readonly pathLengthCm: number;
   /** Why each point of the crude is used or not (`pointUse`). */
   readonly use: Uint8Array;
   /** Positions of the fitted points. */
   readonly at: Int32Array;
+  /** Absorbance at the fitted points, stray light taken out. */
+  readonly measured: Float64Array;
   /** Standards on the crude's points, moved by the shift. */
   readonly molarAbsorptivity: readonly MolarAbsorptivity[];
   /** Unconstrained amounts in the cuvette, mol/L: they carry the inference. */
@@ -44,108 +60,192 @@ export interface Unmixing {
     readonly drawn: number;
   }[];
   readonly shiftNm: { readonly value: number; readonly sd: number };
+  /** Fraction of the light in the reference beam: stated, or found with its standard deviation. */
+  readonly strayLight: { readonly value: number; readonly sd: number };
   readonly noise: NoiseModel;
-  readonly noiseFrom: 'sheet' | 'spectrum';
+  readonly noiseFrom: FitSettings['noiseFrom'];
+  /** How the noise of one point leans on that of its neighbours. */
+  readonly correlation: NoiseCorrelation;
   /** Factor on the point variance for lack of fit (and for the scale of an estimated noise). */
   readonly excess: number;
-  /** Degrees of freedom behind `excess`; Infinity where the noise is given and nothing lacks. */
+  /** The same factor without lack of fit. */
+  readonly instrumentLevel: number;
+  /** Degrees of freedom behind `excess` and the correlation; Infinity where the noise is known and nothing lacks. */
   readonly df: number;
+  /** What stands out most from the residual; null where there are too few points to look. */
+  readonly band: FoundBand | null;
   /** Null where the noise is known from this residual only. */
   readonly reducedChiSquare: number | null;
+  /** Covariance of all parameters of `fit` from noise, lack of fit and priors. */
+  readonly covariance: readonly Float64Array[];
   readonly fit: WeightedFit;
 }
 
 /** Smallest number of degrees of freedom from which a noise of its own is taken. */
 const fewestForNoise = 1;
-const lackOfFitFalseAlarm = 0.01;
+/** and from which its two parts are told apart. */
+const fewestForTwoParts = 30;
+/** A shift beyond this is not an instrument's wavelength error but another spectrum. nm */
+const largestShiftNm = 2;
+/** Stray light beyond this is a fault of the instrument, not an error to fit. */
+const largestStrayLight = 0.05;
+/** Step of the slope with stray light. */
+const strayLightStep = 1e-5;
 
 /**
  * Weighted least squares of one crude spectrum on the standards and the baseline, on the crude's
  * own points. Throws a `Refusal` where too few points are left or the ranges do not meet.
  */
 export function unmix(input: UnmixInput): Unmixing {
-  const { crude, standards, settings, pathLengthCm } = input;
+  const { crude, settings, pathLengthCm } = input;
+  const standards = input.standardsAt(statedStrayLight(settings));
   const onCrude = standardsAt(standards, crude.wavelengthNm, 0);
-  const use = usableAtEveryShift(input, choosePoints(crude, onCrude, settings));
+  const use = usableAtEveryShift(input, standards, choosePoints(crude, onCrude, settings));
   const at = usedPoints(use);
-  refuseTooFew(input, use, at);
-  const measured = Float64Array.from(at, (i) => crude.values[i]!);
-  const first = solveWith(input, at, measured, firstNoise(input));
-  const { noise, noiseFrom, known } = noiseOf(input, at, first.fit);
-  const { fit, shiftNm, molarAbsorptivity, design } = solveWith(input, at, measured, noise);
-  const { excess, df } = lackOfFit(fit, noiseFrom);
+  refuseTooFew(input, standards.length, use, at);
+  const first = solveWith(input, at, firstNoise(input));
+  const { noise, known } = noiseModelOf(input, at, first);
+  const solved = settings.noise ? first : solveWith(input, at, noise);
+  const { fit, sizes, molarAbsorptivity, design } = solved;
+  const nm = Float64Array.from(at, (i) => crude.wavelengthNm[i]!);
+  const beside =
+    settings.shift === 'none' && known
+      ? [shiftSlope(molarAbsorptivity, at, pathLengthCm, fit.parameters)]
+      : [];
+  const ofFit = noiseOfFit({ at, nm, fit, beside }, input.noiseSamples, settings.noiseFrom);
   const size = standards.length;
-  const drawn = drawnParameters(fit, measured, design, size);
+  const drawn = drawnParameters(fit, solved.measured, design, size);
+  const covariance = pointCovariance({ at, fit, ...ofFit });
+  const sdOf = (k: number): number => Math.sqrt(covariance[k]![k]!);
+  const shifts = settings.shift === 'common' ? 1 : 0;
+  const baselines = design.baseline.length;
   return {
     species: standards.map(({ species }) => species),
+    standards: solved.standards,
     pathLengthCm,
     use,
     at,
+    measured: solved.measured,
     molarAbsorptivity,
     amounts: fit.parameters.slice(0, size),
     drawn: drawn.slice(0, size),
     baseline: design.baseline.map(({ term }, j) => ({
       term,
       value: fit.parameters[size + j]!,
-      sd: Math.sqrt(excess * pointVariance(fit, size + j)),
+      sd: sdOf(size + j),
       drawn: drawn[size + j]!,
     })),
-    shiftNm: {
-      value: shiftNm,
-      sd:
-        settings.shift === 'common'
-          ? Math.sqrt(excess * pointVariance(fit, fit.parameters.length - 1))
-          : 0,
+    shiftNm: { value: sizes.shiftNm, sd: shifts === 1 ? sdOf(size + baselines) : 0 },
+    strayLight: {
+      value: sizes.strayLight,
+      sd: settings.strayLight === 'fit' ? sdOf(size + baselines + shifts) : 0,
     },
     noise,
-    noiseFrom,
-    excess,
-    df,
+    noiseFrom: settings.noiseFrom,
+    correlation: ofFit.correlation,
+    excess: ofFit.excess,
+    instrumentLevel: ofFit.instrumentLevel,
+    df: ofFit.df,
+    band: known ? ofFit.band : null,
     reducedChiSquare: known ? fit.reducedChiSquare : null,
+    covariance,
     fit,
   };
 }
 
 interface Solution {
+  readonly standards: readonly SpeciesStandard[];
+  /** Absorbance of the crude at the fitted points, stray light taken out. */
+  readonly measured: Float64Array;
   readonly fit: WeightedFit;
-  readonly shiftNm: number;
+  readonly sizes: { readonly shiftNm: number; readonly strayLight: number };
   readonly molarAbsorptivity: readonly MolarAbsorptivity[];
   readonly design: Design;
 }
 
-function solveWith(
-  { crude, standards, settings, pathLengthCm }: UnmixInput,
-  at: Int32Array,
-  measured: Float64Array,
-  noise: NoiseModel,
-): Solution {
-  const modelAt = (shiftNm: number) => {
+function solveWith(input: UnmixInput, at: Int32Array, noise: NoiseModel): Solution {
+  const { crude, settings, pathLengthCm } = input;
+  const stateAt = (shiftNm: number, strayLight: number) => {
+    const standards = input.standardsAt(strayLight);
     const moved = standardsAt(standards, crude.wavelengthNm, shiftNm);
-    return {
-      moved,
-      design: designOf(moved, crude.wavelengthNm, at, pathLengthCm, settings.baseline),
-    };
+    const design = designOf(moved, crude.wavelengthNm, at, pathLengthCm, settings.baseline);
+    const columns = [...design.species, ...design.baseline.map(({ column }) => column)];
+    const measured = Float64Array.from(at, (i) => withoutStrayLight(crude.values[i]!, strayLight));
+    return { standards, moved, design, columns, measured };
   };
-  const columnsOf = ({ species, baseline }: Design) => [
-    ...species,
-    ...baseline.map(({ column }) => column),
-  ];
-  const fitWith = (moved: readonly MolarAbsorptivity[], columns: readonly Float64Array[]) =>
-    weightedFit(columns, measured, noise, (parameters) =>
-      standardsVariance(moved, at, pathLengthCm, parameters),
-    );
-  if (settings.shift === 'none') {
-    const { moved, design } = modelAt(0);
-    return { fit: fitWith(moved, columnsOf(design)), shiftNm: 0, molarAbsorptivity: moved, design };
+  const weighing = (moved: readonly MolarAbsorptivity[]) => (parameters: Float64Array) =>
+    standardsVariance(moved, at, pathLengthCm, parameters);
+  const asSolution = (
+    sizes: Solution['sizes'],
+    { standards, measured, moved, design }: ReturnType<typeof stateAt>,
+    fit: WeightedFit,
+  ): Solution => ({ standards, measured, fit, sizes, molarAbsorptivity: moved, design });
+  const stated = { shiftNm: 0, strayLight: statedStrayLight(settings) };
+  const start = stateAt(stated.shiftNm, stated.strayLight);
+  if (settings.shift === 'none' && settings.strayLight !== 'fit') {
+    const fit = weightedFit(start.columns, start.measured, noise, weighing(start.moved));
+    return asSolution(stated, start, fit);
   }
-  const unmoved = modelAt(0).moved;
-  const { shiftNm, fit } = fitShift(measured, {
-    columnsAt: (shift) => columnsOf(modelAt(shift).design),
-    slopeAt: (shift, parameters) => shiftSlope(modelAt(shift).moved, at, pathLengthCm, parameters),
-    fit: (columns) => fitWith(unmoved, columns),
+  const sizesOf = (sizes: Float64Array): Solution['sizes'] => ({
+    shiftNm: settings.shift === 'common' ? sizes[0]! : 0,
+    strayLight: settings.strayLight === 'fit' ? sizes.at(-1)! : stated.strayLight,
   });
-  const { moved, design } = modelAt(shiftNm);
-  return { fit, shiftNm, molarAbsorptivity: moved, design };
+  const stateOf = (sizes: Float64Array) => {
+    const { shiftNm, strayLight } = sizesOf(sizes);
+    return stateAt(shiftNm, strayLight);
+  };
+  const found = fitInstrument({
+    errors: instrumentErrors(settings, start.measured),
+    modelAt: stateOf,
+    slopesAt: (sizes, parameters) => {
+      const { shiftNm, strayLight } = sizesOf(sizes);
+      const here = stateAt(shiftNm, strayLight);
+      const shift =
+        settings.shift === 'common' ? [shiftSlope(here.moved, at, pathLengthCm, parameters)] : [];
+      if (settings.strayLight !== 'fit') return shift;
+      const more = stateAt(shiftNm, strayLight + strayLightStep);
+      return [...shift, strayLightSlope(here, more, parameters)];
+    },
+    fit: ({ columns, measured }, priors) =>
+      weightedFit(columns, measured, noise, weighing(start.moved), priors),
+  });
+  return asSolution(sizesOf(found.sizes), stateOf(found.sizes), found.fit);
+}
+
+function statedStrayLight({ strayLight }: FitSettings): number {
+  return strayLight === 'fit' ? 0 : strayLight;
+}
+
+function instrumentErrors(settings: FitSettings, measured: Float64Array): InstrumentError[] {
+  const shift: InstrumentError = {
+    range: [-largestShiftNm, largestShiftNm],
+    step: 0.5,
+    settled: 1e-7,
+    priorSd: settings.shiftPriorNm,
+  };
+  // a reading needs less stray light than reaches the detector with it
+  const transmitted = 10 ** -measured.reduce((most, value) => Math.max(most, value), 0);
+  const ceiling = Math.min(largestStrayLight, (0.9 * transmitted) / (1 - 0.9 * transmitted));
+  const stray: InstrumentError = {
+    range: [-0.1 * ceiling, ceiling],
+    step: 0.2 * ceiling,
+    settled: 1e-9,
+    priorSd: null,
+  };
+  return [
+    ...(settings.shift === 'common' ? [shift] : []),
+    ...(settings.strayLight === 'fit' ? [stray] : []),
+  ];
+}
+
+/** ∂(model - measured)/∂(stray light) by a forward difference. */
+function strayLightSlope(here: LinearModel, more: LinearModel, parameters: Float64Array) {
+  const departure = ({ columns, measured }: LinearModel): Float64Array => {
+    const fitted = modelled(columns, parameters);
+    return fitted.map((value, i) => value - measured[i]!);
+  };
+  const [before, after] = [departure(here), departure(more)];
+  return before.map((value, i) => (after[i]! - value) / strayLightStep);
 }
 
 function standardsAt(
@@ -159,7 +259,8 @@ function standardsAt(
 
 /** With a free shift, only points that the standards cover at every shift that may be tried. */
 function usableAtEveryShift(
-  { crude, standards, settings }: UnmixInput,
+  { crude, settings }: UnmixInput,
+  standards: readonly SpeciesStandard[],
   use: Uint8Array,
 ): Uint8Array {
   if (settings.shift === 'none') return use;
@@ -180,15 +281,19 @@ function firstNoise({ crude, settings }: UnmixInput): NoiseModel {
   );
 }
 
-function noiseOf(
-  { crude, settings, what }: UnmixInput,
+function noiseModelOf(
+  input: UnmixInput,
   at: Int32Array,
-  fit: WeightedFit,
-): { noise: NoiseModel; noiseFrom: 'sheet' | 'spectrum'; known: boolean } {
-  if (settings.noise) return { noise: settings.noise, noiseFrom: 'sheet', known: true };
+  solution: Solution,
+): { noise: NoiseModel; known: boolean } {
+  const { crude, settings, what } = input;
+  if (settings.noise) return { noise: settings.noise, known: true };
+  const { fit } = solution;
+  if (fit.df >= fewestForTwoParts)
+    return { noise: noiseOfSquares(input, at, solution), known: true };
   const nm = Float64Array.from(at, (i) => crude.wavelengthNm[i]!);
   const estimate = estimateNoise(nm, fit.residual, fit.fitted, roundingSd(crude.values));
-  if (estimate) return { noise: estimate, noiseFrom: 'spectrum', known: true };
+  if (estimate) return { noise: estimate, known: true };
   if (fit.df < fewestForNoise) {
     throw new Refusal({
       code: 'noise-unknown',
@@ -198,28 +303,28 @@ function noiseOf(
     });
   }
   const rms = Math.sqrt(fit.residual.reduce((sum, value) => sum + value * value, 0) / fit.df);
-  return { noise: { constant: rms, transmittance: 0 }, noiseFrom: 'spectrum', known: false };
+  return { noise: { constant: rms, transmittance: 0 }, known: false };
 }
 
-function lackOfFit(
-  { reducedChiSquare, df }: WeightedFit,
-  noiseFrom: 'sheet' | 'spectrum',
-): { excess: number; df: number } {
-  if (df < 1) return { excess: 1, df: Number.POSITIVE_INFINITY };
-  if (noiseFrom === 'spectrum') return { excess: reducedChiSquare, df };
-  const limit = chiSquareQuantile(1 - lackOfFitFalseAlarm, df) / df;
-  return reducedChiSquare > limit
-    ? { excess: reducedChiSquare, df }
-    : { excess: 1, df: Number.POSITIVE_INFINITY };
-}
-
-/** Variance of one parameter from the points: Σ gain² σ². */
-function pointVariance({ gain, variance }: WeightedFit, parameter: number): number {
-  const row = gain[parameter];
-  if (!row) return 0;
-  let sum = 0;
-  for (const [i, value] of row.entries()) sum += value * value * variance[i]!;
-  return sum;
+/**
+ * Both parts of the noise from the squares of the residual (what a wavelength offset or a band
+ * without a standard may have put there taken out, spikes cut) together with what the standards of
+ * the sheet show between them; the standards' own part is taken off.
+ */
+function noiseOfSquares(input: UnmixInput, at: Int32Array, { fit, molarAbsorptivity }: Solution) {
+  const { crude, pathLengthCm, noiseSamples } = input;
+  const nm = Float64Array.from(at, (i) => crude.wavelengthNm[i]!);
+  const slope = shiftSlope(molarAbsorptivity, at, pathLengthCm, fit.parameters);
+  const { residual, directions } = cleanedResidual({ nm, fit, beside: [slope] });
+  const ofStandards = standardsVariance(molarAbsorptivity, at, pathLengthCm, fit.parameters);
+  const expected = {
+    flat: new Float64Array(at.length).fill(1),
+    rise: fit.fitted.map((absorbance) => 100 ** Math.min(absorbance, 6)),
+  };
+  const kept = 1 - directions / at.length;
+  const own = levelsOfSquares(residual, expected, kept, ofStandards);
+  const others = noiseSamples.flatMap(({ levels }) => levels);
+  return twoParts([...own, ...others], roundingSd(crude.values));
 }
 
 function drawnParameters(
@@ -240,12 +345,14 @@ function drawnParameters(
 }
 
 function refuseTooFew(
-  { standards, settings, what, crude }: UnmixInput,
+  { settings, what, crude }: UnmixInput,
+  species: number,
   use: Uint8Array,
   at: Int32Array,
 ): void {
   const baseline = { none: 0, offset: 1, line: 2, scatter: 2 }[settings.baseline];
-  const unknowns = standards.length + baseline + (settings.shift === 'common' ? 1 : 0);
+  const errors = (settings.shift === 'common' ? 1 : 0) + (settings.strayLight === 'fit' ? 1 : 0);
+  const unknowns = species + baseline + errors;
   if (at.length >= unknowns) return;
   const [low, high] = [crude.wavelengthNm[0], crude.wavelengthNm.at(-1)];
   if (settings.windowNm && use.every((reason) => reason === pointUse.outsideWindow)) {

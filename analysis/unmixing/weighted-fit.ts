@@ -10,8 +10,11 @@ export interface WeightedFit {
   readonly variance: Float64Array;
   /** Photometric noise alone. */
   readonly noiseVariance: Float64Array;
-  /** Parameters by points: parameters = gain · measured. */
+  /** Parameters by points: parameters = gain · measured (+ priorGain · what the priors suppose). */
   readonly gain: readonly Float64Array[];
+  /** Parameters by priors, per standard deviation of each prior. */
+  readonly priorGain: readonly Float64Array[];
+  readonly priors: readonly Prior[];
   /** Of the whitened, column-scaled matrix. */
   readonly condition: number;
   /** Directions in the parameters that the data do not see at all; [] where all are seen. */
@@ -23,9 +26,21 @@ export interface WeightedFit {
   readonly df: number;
 }
 
+/** What is known of one parameter beforehand: an observation of it. */
+export interface Prior {
+  /** Position of the parameter. */
+  readonly parameter: number;
+  readonly value: number;
+  readonly sd: number;
+}
+
 const mostRounds = 20;
-/** Far below what any instrument prints. */
-const settledAbsorbance = 1e-9;
+/** A change of the fitted absorbance that moves a weight by less than a millionth. */
+const settledAbsorbance = 1e-7;
+/** Up to this condition the plain orthogonal solution is good to ten digits; beyond it is refined. */
+const plainCondition = 1e4;
+/** Columns as like as this are the same within what any standard's digits carry. */
+const likeOthers = 1e-7;
 
 /**
  * Weighted least squares with weights from the *fitted* absorbance, repeated until they stand
@@ -35,12 +50,14 @@ const settledAbsorbance = 1e-9;
  * @param measured absorbance
  * @param noise photometric noise model
  * @param standardsVariance variance that the standards' own noise adds at each point, for given parameters
+ * @param priors observations of single parameters, joined to the points
  */
 export function weightedFit(
   columns: readonly Float64Array[],
   measured: Float64Array,
   noise: NoiseModel,
   standardsVariance: (parameters: Float64Array) => Float64Array,
+  priors: readonly Prior[] = [],
 ): WeightedFit {
   let fitted = measured;
   let extra = new Float64Array(measured.length);
@@ -50,8 +67,13 @@ export function weightedFit(
     const variance = noiseVariance.map((value, i) => value + extra[i]!);
     const sd = variance.map(Math.sqrt);
     const whitened = columns.map((column) => column.map((value, i) => value / sd[i]!));
-    const factors = factorise(whitened);
-    const parameters = factors.solve(measured.map((value, i) => value / sd[i]!));
+    const factors = factorise(withPriors(whitened, priors), undefined, likeOthers);
+    const right = withPriorValues(
+      measured.map((value, i) => value / sd[i]!),
+      priors,
+    );
+    const parameters =
+      factors.condition < plainCondition ? factors.solvePlain(right) : factors.solve(right);
     const before = fitted;
     fitted = modelled(columns, parameters);
     if (settled || round >= mostRounds) {
@@ -61,11 +83,42 @@ export function weightedFit(
         sd,
         whitened,
         factors,
+        priors,
       });
     }
     settled = round > 0 && largestChange(before, fitted) <= settledAbsorbance;
     extra = new Float64Array(standardsVariance(parameters));
   }
+}
+
+/** The columns with one more row for each prior. */
+export function withPriors(
+  columns: readonly Float64Array[],
+  priors: readonly Prior[],
+): readonly Float64Array[] {
+  if (priors.length === 0) return columns;
+  return columns.map((column, k) =>
+    extended(
+      column,
+      priors.map(({ parameter, sd }) => (parameter === k ? 1 / sd : 0)),
+    ),
+  );
+}
+
+function withPriorValues(vector: Float64Array, priors: readonly Prior[]): Float64Array {
+  return priors.length === 0
+    ? vector
+    : extended(
+        vector,
+        priors.map(({ value, sd }) => value / sd),
+      );
+}
+
+function extended(vector: Float64Array, more: readonly number[]): Float64Array {
+  const out = new Float64Array(vector.length + more.length);
+  out.set(vector);
+  out.set(more, vector.length);
+  return out;
 }
 
 /** Σ columns · parameters, one entry a point. */
@@ -92,16 +145,19 @@ interface Solved {
   readonly sd: Float64Array;
   readonly whitened: readonly Float64Array[];
   readonly factors: OrthogonalFactors;
+  readonly priors: readonly Prior[];
 }
 
 function finished(
   measured: Float64Array,
   fitted: Float64Array,
   parameters: Float64Array,
-  { variance, noiseVariance, sd, whitened, factors }: Solved,
+  { variance, noiseVariance, sd, whitened, factors, priors }: Solved,
 ): WeightedFit {
   const residual = measured.map((value, i) => value - fitted[i]!);
-  const df = measured.length - factors.rank;
+  const points = measured.length;
+  const df = points + priors.length - factors.rank;
+  const inverse = factors.pseudoInverse();
   let chiSquare = 0;
   for (const [i, value] of residual.entries()) chiSquare += (value * value) / variance[i]!;
   return {
@@ -110,7 +166,9 @@ function finished(
     residual,
     variance,
     noiseVariance,
-    gain: factors.pseudoInverse().map((row) => row.map((value, i) => value / sd[i]!)),
+    gain: inverse.map((row) => row.subarray(0, points).map((value, i) => value / sd[i]!)),
+    priorGain: inverse.map((row) => row.subarray(points)),
+    priors,
     condition: factors.condition,
     unseen: factors.nullSpace(),
     whitened,

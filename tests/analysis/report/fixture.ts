@@ -84,6 +84,7 @@ const fit: AliquotResult['fit'] = {
     { term: 'offset', absorbance: quantified(4e-4, 1e-4, 2e-4, 6e-4) },
     { term: 'slope', absorbance: quantified(-3e-5, 9e-5, -2.1e-4, 1.5e-4) },
   ],
+  strayLight: { ...quantified(0, 0, 0, 0), from: 'none' },
   noise: { constant: 3.1e-4, transmittance: 2.2e-4, from: 'spectrum' },
 };
 

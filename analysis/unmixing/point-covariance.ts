@@ -1,0 +1,35 @@
+import { correlate, type NoiseCorrelation } from '../spectrum/correlated-noise.ts';
+import { dot } from '../spectrum/vectors.ts';
+import { spreadOut } from './noise-of-fit.ts';
+import type { WeightedFit } from './weighted-fit.ts';
+
+interface NoisyFit {
+  /** Positions of the fitted points. */
+  readonly at: Int32Array;
+  readonly fit: Pick<WeightedFit, 'gain' | 'priorGain' | 'noiseVariance'>;
+  readonly correlation: NoiseCorrelation;
+  /** Factor on the variance of the points. */
+  readonly excess: number;
+}
+
+/**
+ * Covariance of the parameters from photometric noise and lack of fit, G Σ Gᵀ with Σ the variance of
+ * the points *and* how they lean on each other (the sandwich form; Huber 1967, White 1980), and from
+ * priors. Parameters × parameters.
+ */
+export function pointCovariance({ at, fit, correlation, excess }: NoisyFit): Float64Array[] {
+  const sd = fit.noiseVariance.map(Math.sqrt);
+  const rows = fit.gain.map((row) =>
+    spreadOut(
+      at,
+      row.map((value, i) => value * sd[i]!),
+    ),
+  );
+  const moved = rows.map((row) => correlate(correlation.rho, row));
+  return rows.map((a, k) =>
+    Float64Array.from(
+      moved,
+      (b, l) => excess * dot(a, b) + dot(fit.priorGain[k]!, fit.priorGain[l]!),
+    ),
+  );
+}
