@@ -1,90 +1,72 @@
-import {
-  type AliquotResult,
-  type PreparedSheet,
-  prepare,
-  quantifyAliquot,
-  type Reading,
-  Refusal,
-  type RefusedPart,
-  refusalSentence,
-  type SheetAliquot,
-} from '../../analysis/index.ts';
+import { stat } from 'node:fs/promises';
+import { type EachFitter, eachFitter, threadsFor } from './each-fitter.ts';
+import { eachItems } from './each-items.ts';
+import type { EachLines } from './each-line.ts';
+import { EachProgress } from './each-progress.ts';
 import { type ExitCode, exitCodes } from './exit-codes.ts';
-import { openSheetFile, readExportFile } from './sheet-file.ts';
+import { openSheetFile } from './sheet-file.ts';
 import type { Streams } from './streams.ts';
 
-/** Fits every trace of every file as an aliquot of the sheet, one line each, in input order. */
+/**
+ * Fits every trace of every file as an aliquot of the sheet, one line each, in input order. Streams:
+ * a bounded number of traces is on its way at any time, and the next are read when those before
+ * have been taken from standard output.
+ */
 export async function quantifyEachCommand(
   call: { readonly sheet: string; readonly files: readonly string[]; readonly json: boolean },
   streams: Streams,
+  threads?: number,
 ): Promise<ExitCode> {
-  const { sheet, readings, warnings } = await openSheetFile(call.sheet);
-  for (const warning of warnings) streams.say(warning);
-  const prepared = prepare(sheet, readings);
-  let done = 0;
-  let refused = 0;
-  for (const file of call.files) {
-    for await (const line of linesOf(prepared, file)) {
-      if ('refused' in line) {
-        refused++;
-        streams.say(`${line.aliquot}: ${line.refused.why}`);
-      } else done++;
-      await streams.result(`${call.json ? JSON.stringify(line) : lineText(line)}\n`);
-    }
-    streams.say(`${file}: ${done} fitted, ${refused} refused so far`);
-  }
-  if (refused === 0) return exitCodes.done;
-  return done > 0 ? exitCodes.someRefused : exitCodes.inputUnusable;
-}
-
-/** A trace that was refused keeps its place in the output. */
-interface RefusedLine {
-  readonly aliquot: string;
-  readonly refused: Pick<RefusedPart, 'what' | 'why' | 'line'>;
-}
-
-async function* linesOf(
-  prepared: PreparedSheet,
-  file: string,
-): AsyncGenerator<AliquotResult | RefusedLine> {
-  const reading = await readExportFile(file, file);
-  if (!reading) {
-    const why = 'There is no such file. Check the path.';
-    yield { aliquot: file, refused: { what: 'the file', why, line: null } };
-    return;
-  }
-  const readings = new Map([[file, reading]]);
-  for (const [index, { trace = index }] of reading.spectra.entries()) {
-    const aliquot: SheetAliquot = { id: `${file}#${trace}`, spectrum: { file, trace } };
-    yield fitted(prepared, aliquot, readings);
-  }
-  for (const { what, why, line } of reading.refused) {
-    yield { aliquot: file, refused: { what, why, line } };
-  }
-}
-
-function fitted(
-  prepared: PreparedSheet,
-  aliquot: SheetAliquot,
-  readings: ReadonlyMap<string, Reading>,
-): AliquotResult | RefusedLine {
+  const opened = await openSheetFile(call.sheet);
+  for (const warning of opened.warnings) streams.say(warning);
+  const fitter = eachFitter(
+    { opened, json: call.json },
+    threads ?? threadsFor(await bytesOf(call.files)),
+  );
+  const progress = new EachProgress(streams.say);
   try {
-    return quantifyAliquot(prepared, aliquot, readings).result;
-  } catch (error) {
-    if (!(error instanceof Refusal)) throw error;
-    const { line = null } = error.where;
-    const why = refusalSentence({ code: error.code, message: error.message, mend: error.mend });
-    return { aliquot: aliquot.id, refused: { what: aliquot.id, why, line } };
+    await writeInOrder(call.files, fitter, async ({ text, fitted, refused, fault }) => {
+      for (const sentence of refused) streams.say(sentence);
+      if (text !== '') await streams.result(text);
+      if (fault !== undefined) throw fault;
+      progress.add({ fitted, refused: refused.length });
+    });
+  } finally {
+    await fitter.close();
   }
+  progress.finish();
+  if (progress.refused === 0) return exitCodes.done;
+  return progress.fitted > 0 ? exitCodes.someRefused : exitCodes.inputUnusable;
 }
 
-function lineText(line: AliquotResult | RefusedLine): string {
-  if ('refused' in line) return `${line.aliquot}  refused: ${line.refused.why}`;
-  const split = line.split.map(({ species, fraction: { value, interval95 } }) => {
-    const [low, high] = interval95.map((end) => (end === null ? '?' : (100 * end).toFixed(2)));
-    const middle = value === null ? '?' : (100 * value).toFixed(2);
-    return `${species} ${middle} % (${low} to ${high})`;
-  });
-  const doubts = line.doubts.map(({ code }) => code).join(', ');
-  return `${line.aliquot}  ${split.join('  ')}${doubts === '' ? '' : `  ! ${doubts}`}`;
+async function writeInOrder(
+  files: readonly string[],
+  { lines, ahead }: EachFitter,
+  write: (lines: EachLines) => Promise<void>,
+): Promise<void> {
+  const underway: Promise<EachLines>[] = [];
+  const writeFirst = async () => {
+    const first = underway.shift();
+    if (first) await write(await first);
+  };
+  for await (const group of eachItems(files)) {
+    const coming = lines(group);
+    // it is awaited when its turn has come; a failure waits until then
+    coming.catch(() => {});
+    underway.push(coming);
+    if (underway.length >= ahead) await writeFirst();
+  }
+  while (underway.length > 0) await writeFirst();
+}
+
+async function bytesOf(files: readonly string[]): Promise<number> {
+  let bytes = 0;
+  for (const file of files) {
+    try {
+      bytes += (await stat(file)).size;
+    } catch {
+      // it is refused by name when its turn has come
+    }
+  }
+  return bytes;
 }
