@@ -1,6 +1,7 @@
 import type { FitSettings } from '../sheet/defaults.ts';
 import { absorbanceVariance } from '../spectrum/noise.ts';
 import type { Spectrum } from '../spectrum/spectrum.ts';
+import { linearityOf } from '../standards/linearity.ts';
 import { molarAbsorptivityAt } from '../standards/molar-absorptivity.ts';
 import type { SpeciesStandard } from '../standards/species-standard.ts';
 import { baselineColumns } from '../unmixing/design.ts';
@@ -72,8 +73,16 @@ export function standardCurves(standard: SpeciesStandard): StandardCurves {
       wavelengthNm: solution.wavelengthNm,
       molarAbsorptivity: solution.epsilon,
       factor: standard.factors[s]!,
+      offset: standard.offsets[s]!,
     })),
+    linearity: testedLinearity(standard),
   };
+}
+
+function testedLinearity({ solutions }: SpeciesStandard): StandardCurves['linearity'] {
+  const { curvature, straightUpTo, largestAbsorbance } = linearityOf(solutions);
+  if (!curvature) return null;
+  return { testedUpTo: largestAbsorbance, straightUpTo: straightUpTo ?? largestAbsorbance };
 }
 
 function joinedWavelengths({ solutions }: SpeciesStandard): Float64Array {

@@ -152,7 +152,11 @@ export interface StandardCurves {
     readonly molarAbsorptivity: Float64Array;
     /** Factor that brings this solution onto the combined spectrum; 1 is agreement. */
     readonly factor: number;
+    /** Offset of its own recording that was taken out of it, absorbance. */
+    readonly offset: number;
   }[];
+  /** Largest absorbance tested for a bend against concentration, and up to where none was seen; null where it could not be tested. */
+  readonly linearity: { readonly testedUpTo: number; readonly straightUpTo: number } | null;
 }
 
 export interface Quantification {

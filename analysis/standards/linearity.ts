@@ -8,7 +8,7 @@ import {
   noiseCorrelation,
 } from '../spectrum/correlated-noise.ts';
 import { dot, orthonormal, projectedOut } from '../spectrum/vectors.ts';
-import { absorbancePerEpsilon, type Overlaid, overlaid } from './overlaid.ts';
+import { absorbanceScale, type Overlaid, overlaid } from './overlaid.ts';
 import type { Solution } from './solution.ts';
 
 /** Whether the absorbance of the solutions of one species grows with concentration at every wavelength. */
@@ -133,12 +133,12 @@ function contrast(
   points: Overlaid,
   most: number,
 ): Contrast | null {
-  const perEpsilon = absorbancePerEpsilon(strongest);
+  const perEpsilon = absorbanceScale(strongest);
   const size = strongest.wavelengthNm.length;
   const kept = Array.from(points.at.keys()).filter((j) => perEpsilon * points.x[j]! <= most);
   if (kept.length < fewestPoints) return null;
   const slope = slopeOf(points, kept);
-  const m = (slope * absorbancePerEpsilon(solution)) / perEpsilon;
+  const m = (slope * absorbanceScale(solution)) / perEpsilon;
   if (!(m > 0 && Math.abs(m - 1) >= smallestContrast)) return null;
   const used = new Uint8Array(size);
   const sd = new Float64Array(size);

@@ -27,10 +27,11 @@ export function overlaid(onto: Solution, solution: Solution): Overlaid {
 }
 
 /** Concentration × path of a solution; a spectrum given as ε counts as one recorded up to an absorbance of 1. */
-export function absorbancePerEpsilon({ epsilon, usable, largestAbsorbance }: Solution): number {
+export function absorbanceScale({ absorbancePerEpsilon, epsilon, usable }: Solution): number {
+  if (absorbancePerEpsilon !== null) return absorbancePerEpsilon;
   let largest = 0;
   for (const [i, value] of epsilon.entries()) {
     if (usable[i] === 1 && value > largest) largest = value;
   }
-  return largest > 0 ? (largestAbsorbance || 1) / largest : 1;
+  return largest > 0 ? 1 / largest : 1;
 }

@@ -1,7 +1,7 @@
 import { inverse, Matrix } from 'ml-matrix';
 import { chiSquareQuantile } from '../distributions/chi-square.ts';
 import { type Offsets, offsetsOf } from './offsets.ts';
-import { absorbancePerEpsilon, overlaid } from './overlaid.ts';
+import { absorbanceScale, overlaid } from './overlaid.ts';
 import type { Solution } from './solution.ts';
 import { type StraightLine, straightLine } from './straight-line.ts';
 
@@ -96,7 +96,7 @@ export function combineSolutions(
   return {
     species: first.species,
     solutions,
-    offsets: recorded.map((solution, s) => absorbancePerEpsilon(solution) * offsets.epsilon[s]!),
+    offsets: recorded.map((solution, s) => absorbanceScale(solution) * offsets.epsilon[s]!),
     constantUncertainty: offsets.uncertainty * (factors[recorded.indexOf(reference)] ?? 1),
     factors,
     scaleErrors,
@@ -147,7 +147,7 @@ function offsetsAgainst(recorded: readonly Solution[], lines: readonly StraightL
       slope: lines[s]!.slope,
       intercept: lines[s]!.intercept,
       interceptVariance: lines[s]!.interceptVariance,
-      absorbancePerEpsilon: absorbancePerEpsilon(solution),
+      absorbancePerEpsilon: absorbanceScale(solution),
     })),
   );
 }

@@ -24,11 +24,30 @@ export function reactionHtml(sheet: Sheet): string {
   )}`;
 }
 
+type Met = StandardCurves['solutions'][number];
+
+function metText(solution: Met | undefined, text: (solution: Met) => string): string {
+  return solution ? text(solution) : '';
+}
+
+/** Up to which absorbance the solutions of each species were seen to follow Beer-Lambert. */
+function linearityText(sheet: Sheet, standards: readonly StandardCurves[]): string {
+  const parts = standards.map(({ species, linearity }) => {
+    const name = speciesName(sheet, species);
+    if (!linearity) return `${name} not tested`;
+    const { testedUpTo, straightUpTo } = linearity;
+    return straightUpTo < testedUpTo
+      ? `${name} bends above ${numberText(straightUpTo, 2)}`
+      : `${name} straight up to ${numberText(testedUpTo, 2)}`;
+  });
+  return ` Absorbance against concentration (F-test of a bend, 1 % false alarms): ${parts.join('; ')}.`;
+}
+
 /** Standards: what was measured of each species, and the molar absorptivity that came of it. */
 export function standardsHtml(sheet: Sheet, standards: readonly StandardCurves[]): string {
-  const factors = new Map(
+  const met = new Map(
     standards.flatMap(({ solutions }) =>
-      solutions.map(({ standard, factor }) => [standard, factor] as const),
+      solutions.map((solution) => [solution.standard, solution] as const),
     ),
   );
   const rows = (sheet.standards ?? []).map((standard) => [
@@ -41,7 +60,8 @@ export function standardsHtml(sheet: Sheet, standards: readonly StandardCurves[]
     percent(standard.relativeStandardUncertainty),
     givenText(standard.pathLengthCm ?? 1),
     breakable(fileOf(standard.spectrum)),
-    factors.has(standard.id) ? numberText(100 * ((factors.get(standard.id) ?? 1) - 1), 2) : '',
+    metText(met.get(standard.id), ({ factor }) => numberText(100 * (factor - 1), 2)),
+    metText(met.get(standard.id), ({ offset }) => numberText(1000 * offset, 2)),
   ]);
   const stocks = (sheet.stocks ?? []).map(({ id, species, relativeStandardUncertainty }) => [
     breakable(id),
@@ -55,8 +75,18 @@ export function standardsHtml(sheet: Sheet, standards: readonly StandardCurves[]
   return [
     '<h2>Standards</h2>',
     htmlTable(
-      ['standard', 'of', 'stock', 'µmol/L', 'u, %', 'path, cm', 'file', 'moved by, %'],
-      ['left', 'left', 'left', 'right', 'right', 'right', 'left', 'right'],
+      [
+        'standard',
+        'of',
+        'stock',
+        'µmol/L',
+        'u, %',
+        'path, cm',
+        'file',
+        'moved by, %',
+        'offset, mAU',
+      ],
+      ['left', 'left', 'left', 'right', 'right', 'right', 'left', 'right', 'right'],
       rows,
     ),
     stocks.length === 0
@@ -65,7 +95,7 @@ export function standardsHtml(sheet: Sheet, standards: readonly StandardCurves[]
     standardsFigureSvg(sheet, standards),
     scales.length === 0
       ? ''
-      : `<p class="soft">Relative standard uncertainty of the scale of ε: ${scales.join('; ')}. “Moved by” is how far a solution was brought to meet the others of its species.</p>`,
+      : `<p class="soft">Relative standard uncertainty of the scale of ε: ${scales.join('; ')}. “Moved by” is how far a solution was brought to meet the others of its species, “offset” a constant of its own that was taken out of it before.${escaped(linearityText(sheet, standards))}</p>`,
   ].join('');
 }
 

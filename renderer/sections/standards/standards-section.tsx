@@ -15,6 +15,7 @@ import { StandardsPlot } from '../../plots/standards-plot.tsx';
 import { SpeciesGlyph } from '../../species/species-glyph.tsx';
 import type { SectionProps } from '../section.ts';
 import { sourceName } from '../source-name.ts';
+import { AgreementTable } from './agreement-table.tsx';
 import { StocksTable } from './stocks-table.tsx';
 
 export function standardsSummary({ sheet }: SectionProps): string {
@@ -88,7 +89,10 @@ export function StandardsSection(props: SectionProps) {
       <LoadLine destination="standards" what="more exports of standards" />
       {stocks.length > 0 && <StocksTable {...props} stocks={stocks} />}
       {quantification && quantification.standards.length > 0 && (
-        <StandardsPlot standards={quantification.standards} sheet={sheet} />
+        <>
+          <StandardsPlot standards={quantification.standards} sheet={sheet} />
+          <AgreementTable standards={quantification.standards} sheet={sheet} />
+        </>
       )}
     </>
   );

@@ -214,8 +214,10 @@ const standards: readonly StandardCurves[] = shapes.map(([species, epsilon]) => 
       wavelengthNm,
       molarAbsorptivity: wavelengthNm.map(epsilon),
       factor: 1.0018,
+      offset: 0.0021,
     },
   ],
+  linearity: { testedUpTo: 1.1, straightUpTo: 1.1 },
 }));
 
 export const quantification: Quantification = {

@@ -59,6 +59,7 @@ export function madeSolution(gauss: () => number, recipe: Recipe): Solution {
     sd,
     usable,
     largestAbsorbance,
+    absorbancePerEpsilon: concentration,
     scaleErrors: [
       { source: `dilution of ${recipe.standard}`, relative: recipe.u ?? 0 },
       { source: 'stock A', relative: recipe.stockU ?? 0 },
