@@ -27,14 +27,48 @@ interface SolutionPart {
   readonly sd: Float64Array;
 }
 
+/** One species on one grid, as it was asked for before. */
+interface Known {
+  /** A copy: a grid that is changed in place is another grid. */
+  readonly targetNm: Float64Array;
+  readonly found: MolarAbsorptivity;
+}
+
+/** The crude's grid and those of a few tried shifts; a batch of spectra on one grid asks for the first only. */
+const mostGrids = 4;
+const knownOf = new WeakMap<SpeciesStandard, Known[]>();
+
 /**
  * Brings the standards of one species to the target wavelengths and joins them point by point,
- * each weighted by its noise there; never extrapolates.
+ * each weighted by its noise there; never extrapolates. Spectra that share a grid share the answer,
+ * which is not to be changed.
  */
 export function molarAbsorptivityAt(
   standard: SpeciesStandard,
   targetNm: Float64Array,
 ): MolarAbsorptivity {
+  const known = knownOf.get(standard) ?? [];
+  const place = known.findIndex((each) => isSameGrid(each.targetNm, targetNm));
+  const before = known[place];
+  if (before) {
+    // those asked for last are kept
+    if (place > 0) known.unshift(...known.splice(place, 1));
+    return before.found;
+  }
+  const found = joinedAt(standard, targetNm);
+  known.unshift({ targetNm: targetNm.slice(), found });
+  known.length = Math.min(known.length, mostGrids);
+  knownOf.set(standard, known);
+  return found;
+}
+
+function isSameGrid(a: Float64Array, b: Float64Array): boolean {
+  if (a.length !== b.length) return false;
+  for (let i = 0; i < a.length; i++) if (a[i] !== b[i]) return false;
+  return true;
+}
+
+function joinedAt(standard: SpeciesStandard, targetNm: Float64Array): MolarAbsorptivity {
   const points = targetNm.length;
   const epsilon = new Float64Array(points);
   const slope = new Float64Array(points);
