@@ -9,8 +9,9 @@ const offsetThatMoves = 2e-3;
 
 /**
  * Solutions of one species that do not follow Beer-Lambert together, in three ways: scales that
- * disagree by more than their uncertainties allow (χ², 1 % false alarms), absorbance that bends against
- * concentration (F, 1 %; `linearityOf`), and, where no baseline is fitted, two whose offsets differ.
+ * disagree by more than their uncertainties allow (χ²), absorbance that bends against
+ * concentration (F; `linearityOf`), and, where no baseline is fitted, two whose offsets differ. The first two raise a false
+ * alarm on 1 % of sheets with three species.
  */
 export const nonlinearStandard: DoubtTest = ({ unmixing, settings, nameOf }) =>
   unmixing.standards.flatMap((standard) =>

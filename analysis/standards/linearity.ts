@@ -1,4 +1,4 @@
-import { fQuantile } from '../distributions/f.ts';
+import { fQuantile, fUpper } from '../distributions/f.ts';
 import {
   correlate,
   independent,
@@ -15,7 +15,7 @@ import type { Solution } from './solution.ts';
 export interface Linearity {
   /** Null where it cannot be tested: one solution, or none that differ in concentration. */
   readonly curvature: Curvature | null;
-  /** True where the curvature is more than noise (F-test, 1 % false alarms) and large enough to matter. */
+  /** True where the curvature is more than noise (F-test, `linearityFalseAlarm`) and large enough to matter. */
   readonly isBent: boolean;
   /** Absorbance up to which no curvature is seen; null where none is seen at all, 0 where it is everywhere. */
   readonly straightUpTo: number | null;
@@ -31,10 +31,16 @@ export interface Curvature {
   readonly relativeDeparture: number;
   readonly f: number;
   readonly limit: number;
+  /** Chance of as large an F without a bend. */
+  readonly pValue: number;
 }
 
-/** The chance that solutions which do follow Beer-Lambert are called bent. */
-const falseAlarm = 0.01;
+/**
+ * The chance that solutions which do follow Beer-Lambert are called bent. There are two such tests of
+ * each species (scales, bend): for a sheet of three species 1 % in all.
+ */
+export const linearityFalseAlarm = 0.01 / 6;
+const worthALook = 0.05;
 /** A departure smaller than this at the largest absorbance is not worth a word. */
 const smallestDeparture = 1e-3;
 const fewestPoints = 12;
@@ -202,8 +208,8 @@ function curvatureOf(
   const samples = contrasts.map((each) => sampleOf(each, q));
   let used = correlation;
   let found = judged(contrasts, samples, used);
-  // noise that leans on its neighbours only ever makes a curvature less sure
-  if (used === independent && score ** 2 / found.variance > found.limit) {
+  // noise that leans on its neighbours only ever makes a curvature less sure: looked for where there may be one
+  if (used === independent && fUpper(score ** 2 / found.variance, 1, found.df) < worthALook) {
     used = noiseCorrelation(samples);
     found = judged(contrasts, samples, used);
   }
@@ -215,6 +221,7 @@ function curvatureOf(
       relativeDeparture: q * (strongest.largestAbsorbance ?? 0),
       f: score ** 2 / found.variance,
       limit: found.limit,
+      pValue: fUpper(score ** 2 / found.variance, 1, found.df),
     },
   };
 }
@@ -232,7 +239,7 @@ function judged(
   contrasts: readonly Contrast[],
   samples: readonly NoiseSample[],
   { rho, df: correlationDf }: NoiseCorrelation,
-): { variance: number; limit: number } {
+): { variance: number; limit: number; df: number } {
   let [squares, freedom] = [0, 0];
   for (const sample of samples) {
     const { variance, df } = levelOf(sample, rho);
@@ -249,6 +256,10 @@ function judged(
   }
   variance += dot(shared, correlate(rho, shared));
   // contrasts that share the strongest do not tell the noise independently
-  const df = Math.min(freedom / contrasts.length, correlationDf);
-  return { variance: level * variance, limit: fQuantile(1 - falseAlarm, 1, Math.max(df, 1)) };
+  const df = Math.max(Math.min(freedom / contrasts.length, correlationDf), 1);
+  return {
+    variance: level * variance,
+    limit: fQuantile(1 - linearityFalseAlarm, 1, df),
+    df,
+  };
 }

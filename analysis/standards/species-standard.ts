@@ -1,5 +1,6 @@
 import { inverse, Matrix } from 'ml-matrix';
 import { chiSquareQuantile } from '../distributions/chi-square.ts';
+import { linearityFalseAlarm } from './linearity.ts';
 import { type Offsets, offsetsOf } from './offsets.ts';
 import { absorbanceScale, overlaid } from './overlaid.ts';
 import type { Solution } from './solution.ts';
@@ -50,8 +51,8 @@ interface CombineOptions {
 const factorFloor = 1e-6;
 /** A scale is not believed to be known better than this beforehand: solutions are made by hand. */
 const smallestPrior = 0.02;
-/** The chance that solutions which do agree are called inconsistent. */
-const falseAlarm = 0.01;
+/** The chance that solutions which do agree are called inconsistent; see `linearityFalseAlarm`. */
+const falseAlarm = linearityFalseAlarm;
 
 /**
  * Combines the solutions of one species. Each is held against the one of widest range by a straight
@@ -78,7 +79,7 @@ export function combineSolutions(
   const offsets = offsetsAgainst(recorded, lines);
   const solutions = recorded.map((solution, s) => withoutOffset(solution, offsets.epsilon[s]!));
   const logScales = lines.map(({ slope }) => Math.log(slope));
-  const noise = recorded.map((solution) => noiseInflation * scaleNoise(solution));
+  const noise = scaleNoises(recorded, reference, lines).map((value) => noiseInflation * value);
   const covariance = scaleCovariance(recorded, noise);
   const weights = gaussMarkovWeights(covariance);
   const mean = logScales.reduce((sum, value, s) => sum + weights[s]! * value, 0);
@@ -155,6 +156,22 @@ function offsetsAgainst(recorded: readonly Solution[], lines: readonly StraightL
 function withoutOffset(solution: Solution, offset: number): Solution {
   if (offset === 0) return solution;
   return { ...solution, epsilon: solution.epsilon.map((value) => value - offset) };
+}
+
+/**
+ * Relative variance of each scale by noise. Where a solution overlaps the reference in a part only,
+ * that part sets how well the two are compared.
+ */
+function scaleNoises(
+  recorded: readonly Solution[],
+  reference: Solution,
+  lines: readonly StraightLine[],
+): number[] {
+  const ofReference = scaleNoise(reference);
+  return recorded.map((solution, s) => {
+    const { slope, slopeVariance } = lines[s]!;
+    return Math.max(scaleNoise(solution), slopeVariance / slope ** 2 - ofReference);
+  });
 }
 
 /** Relative variance of the scale that the solution's own point noise gives, with a free constant. */

@@ -35,13 +35,14 @@ export function errorSources(unmixing: Unmixing, { levelSeen }: StandardsNoise):
   return {
     points: covariance.slice(0, size).map((row) => row.slice(0, size)),
     unseen: unseenCovariance(unmixing),
-    scale: standards.flatMap(({ scaleErrors }, k) =>
-      scaleErrors.map(({ source, relative }) => {
+    scale: standards.flatMap((standard, k) => [
+      ...standard.scaleErrors.map(({ source, relative }) => {
         const effect = new Float64Array(size);
         effect[k] = -relative * Math.max(amounts[k]!, 0);
         return { source, effect };
       }),
-    ),
+      ...constantErrors(unmixing, k),
+    ]),
     standardsNoise: standards.flatMap((standard, k) =>
       standard.solutions.map((solution, s) => ({
         standard: solution.standard,
@@ -49,6 +50,29 @@ export function errorSources(unmixing: Unmixing, { levelSeen }: StandardsNoise):
       })),
     ),
   };
+}
+
+/**
+ * A constant in the ε of one species that its solutions leave open. A fitted offset takes it up: the
+ * gains then sum to 0 but for rounding, and there is no such source.
+ */
+function constantErrors(
+  { fit, amounts, pathLengthCm, standards, baseline }: Unmixing,
+  species: number,
+): ErrorSources['scale'] {
+  const standard = standards[species];
+  if (!standard || standard.constantUncertainty === 0 || baseline.length > 0) return [];
+  const strength = -pathLengthCm * Math.max(amounts[species]!, 0) * standard.constantUncertainty;
+  return [
+    {
+      source: `offsets of the standards of ${standard.species}`,
+      effect: Float64Array.from(
+        amounts,
+        (_, l) =>
+          strength * (fit.gain[l] ?? new Float64Array()).reduce((sum, value) => sum + value, 0),
+      ),
+    },
+  ];
 }
 
 /** What an aliquot has for itself: noise, lack of fit, and what the data do not see. */

@@ -40,7 +40,7 @@ function linearityText(sheet: Sheet, standards: readonly StandardCurves[]): stri
       ? `${name} bends above ${numberText(straightUpTo, 2)}`
       : `${name} straight up to ${numberText(testedUpTo, 2)}`;
   });
-  return ` Absorbance against concentration (F-test of a bend, 1 % false alarms): ${parts.join('; ')}.`;
+  return ` Absorbance against concentration (F-test of a bend): ${parts.join('; ')}.`;
 }
 
 /** Standards: what was measured of each species, and the molar absorptivity that came of it. */
