@@ -35,7 +35,7 @@ export const independent: NoiseCorrelation = {
 const mostLags = 64;
 /** Lags that must stay within noise before the correlation is taken to have ended. */
 const quietLags = 5;
-const rounds = 6;
+const rounds = 3;
 const fewestPoints = 24;
 
 /**
@@ -122,7 +122,7 @@ export function levelOf(
   return { variance: dot(values, values) / trace, df: (trace * trace) / square };
 }
 
-const nearest = 8;
+const nearest = 5;
 
 /**
  * The usual smoother (running mean, repeated running mean, local parabola, Gaussian) whose residual

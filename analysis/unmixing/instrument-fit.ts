@@ -1,4 +1,6 @@
 import { levenbergMarquardt } from 'ml-levenberg-marquardt';
+import { orthonormal, projectedOut } from '../spectrum/vectors.ts';
+import { factorise } from './orthogonal.ts';
 import { modelled, type Prior, type WeightedFit } from './weighted-fit.ts';
 
 /** The linear model with the instrument's errors at given sizes. */
@@ -30,6 +32,7 @@ export interface InstrumentModel {
 }
 
 const mostSteps = 50;
+const smallestSingular = 1e-7;
 
 /**
  * Errors of the instrument by variable projection: a Levenberg-Marquardt search on the whitened data
@@ -62,38 +65,51 @@ export function fitInstrument(model: InstrumentModel): {
   }
 }
 
+/** Weights as they are without errors; the polish takes them anew. */
 function searched(model: InstrumentModel): Float64Array {
-  const nothing = new Float64Array(model.errors.length);
+  const { errors } = model;
+  const nothing = new Float64Array(errors.length);
   const start = model.modelAt(nothing);
   const sd = model.fit(start, []).variance.map(Math.sqrt);
   const points = start.measured.length;
-  const departure = (sizes: Float64Array): Float64Array => {
+  const whitened = (column: Float64Array): Float64Array => column.map((value, i) => value / sd[i]!);
+  const sizesAt = (scaled: readonly number[]): Float64Array =>
+    Float64Array.from(scaled, (value, j) => within(errors[j]!, value * errors[j]!.step));
+  const projected = (scaled: readonly number[]) => {
+    const sizes = sizesAt(scaled);
     const linear = model.modelAt(sizes);
-    const fitted = modelled(linear.columns, model.fit(linear, []).parameters);
-    return fitted.map((value, i) => (linear.measured[i]! - value) / sd[i]!);
+    const factors = factorise(linear.columns.map(whitened), undefined, smallestSingular);
+    const parameters = factors.solvePlain(whitened(linear.measured));
+    const fitted = modelled(linear.columns, parameters);
+    const residual = whitened(linear.measured.map((value, i) => value - fitted[i]!));
+    const slopes = (): Float64Array[] => {
+      const basis = orthonormal(linear.columns.map(whitened));
+      return model
+        .slopesAt(sizes, parameters)
+        .map((slope, j) =>
+          projectedOut(basis, whitened(slope)).map((value) => -value * errors[j]!.step),
+        );
+    };
+    return { residual, slopes };
   };
   const answer = levenbergMarquardt(
     { x: Float64Array.from({ length: points }, (_, i) => i), y: new Float64Array(points) },
     (scaled: number[]) => {
-      const residual = departure(
-        Float64Array.from(scaled, (value, j) =>
-          within(model.errors[j]!, value * model.errors[j]!.step),
-        ),
-      );
+      const { residual } = projected(scaled);
       return (i: number) => residual[i]!;
     },
     {
       initialValues: Array.from(nothing),
-      gradientDifference: 0.1,
-      centralDifference: true,
+      jacobianFunction: (scaled) => {
+        const slopes = projected(scaled).slopes();
+        return (i) => slopes.map((slope) => slope[i]!);
+      },
       damping: 0.01,
-      maxIterations: 8,
+      maxIterations: 6,
       errorTolerance: 1e-300,
     },
   );
-  return Float64Array.from(answer.parameterValues, (value, j) =>
-    within(model.errors[j]!, value * model.errors[j]!.step),
-  );
+  return sizesAt(answer.parameterValues);
 }
 
 function within({ range: [low, high] }: InstrumentError, size: number): number {

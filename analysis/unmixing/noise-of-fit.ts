@@ -91,7 +91,10 @@ export function noiseOfFit(
       band: null,
     };
   }
-  const cleaned = withBandOut(points, scan, withoutBand, near, from);
+  const slight = withoutBand.z ** 2 < slightShare * at.length;
+  const cleaned = slight
+    ? withSlightBand(points, withoutBand, plain, correlation, from)
+    : withBandOut(points, scan, withoutBand, near, from);
   if (Math.abs(cleaned.band.size) <= cleaned.band.limit) {
     return {
       correlation,
@@ -139,6 +142,26 @@ export function cleanedResidual({ nm, fit, beside }: Omit<FittedPoints, 'at'>): 
   };
 }
 
+/** Share of the residual up to which a band leaves the correlation of the noise as it is. */
+const slightShare = 0.1;
+
+/** The band against the noise as the whole residual shows it. */
+function withSlightBand(
+  { nm }: FittedPoints,
+  band: Band,
+  residual: NoiseSample,
+  correlation: NoiseCorrelation,
+  from: KnownNoise['from'],
+): { correlation: NoiseCorrelation; level: number; band: FoundBand } {
+  const { variance, df } = levelOf(residual, correlation.rho);
+  const { level, measured } = levelToUse(variance, df, from);
+  return {
+    correlation,
+    level,
+    band: judged(nm, band, correlation, level, measured ? df : Infinity),
+  };
+}
+
 function withBandOut(
   { at, nm }: FittedPoints,
   scan: Scan,
@@ -151,10 +174,26 @@ function withBandOut(
   const correlation = noiseCorrelation([rest, ...near]);
   const { variance, df } = levelOf(rest, correlation.rho);
   const { level, measured } = levelToUse(variance, df, from);
+  return {
+    correlation,
+    level,
+    band: judged(nm, band, correlation, level, measured ? df : Infinity),
+  };
+}
+
+function judged(
+  nm: Float64Array,
+  band: Band,
+  correlation: NoiseCorrelation,
+  level: number,
+  df: number,
+): FoundBand {
   const range = (nm.at(-1) ?? 0) - (nm[0] ?? 0);
-  const size = sizeAmongNoise(band, correlation, stepOf(nm)) / Math.sqrt(level);
-  const limit = scanLimit(range, falseAlarm, joinedDf(measured ? df : Infinity, correlation));
-  return { correlation, level, band: { ...band, size, limit } };
+  return {
+    ...band,
+    size: sizeAmongNoise(band, correlation, stepOf(nm)) / Math.sqrt(level),
+    limit: scanLimit(range, falseAlarm, joinedDf(df, correlation)),
+  };
 }
 
 function scanOf({ nm, fit, beside }: Omit<FittedPoints, 'at'>): Scan {

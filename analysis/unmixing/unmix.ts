@@ -163,9 +163,22 @@ interface Solution {
   readonly design: Design;
 }
 
+interface State extends LinearModel {
+  readonly standards: readonly SpeciesStandard[];
+  readonly moved: readonly MolarAbsorptivity[];
+  readonly design: Design;
+}
+
 function solveWith(input: UnmixInput, at: Int32Array, noise: NoiseModel): Solution {
   const { crude, settings, pathLengthCm } = input;
-  const stateAt = (shiftNm: number, strayLight: number) => {
+  const states = new Map<string, State>();
+  const stateAt = (shiftNm: number, strayLight: number): State => {
+    const key = `${shiftNm} ${strayLight}`;
+    const state = states.get(key) ?? freshState(shiftNm, strayLight);
+    states.set(key, state);
+    return state;
+  };
+  const freshState = (shiftNm: number, strayLight: number): State => {
     const standards = input.standardsAt(strayLight);
     const moved = standardsAt(standards, crude.wavelengthNm, shiftNm);
     const design = designOf(moved, crude.wavelengthNm, at, pathLengthCm, settings.baseline);
@@ -177,7 +190,7 @@ function solveWith(input: UnmixInput, at: Int32Array, noise: NoiseModel): Soluti
     standardsVariance(moved, at, pathLengthCm, parameters);
   const asSolution = (
     sizes: Solution['sizes'],
-    { standards, measured, moved, design }: ReturnType<typeof stateAt>,
+    { standards, measured, moved, design }: State,
     fit: WeightedFit,
   ): Solution => ({ standards, measured, fit, sizes, molarAbsorptivity: moved, design });
   const stated = { shiftNm: 0, strayLight: statedStrayLight(settings) };
