@@ -130,7 +130,6 @@ interface Contrast {
   /** How the strongest one's own noise enters `y`, per standard deviation of it. */
   readonly ofStrongest: Float64Array;
   readonly ofSolution: Float64Array;
-  readonly count: number;
 }
 
 function contrast(
@@ -147,31 +146,23 @@ function contrast(
   const m = (slope * absorbanceScale(solution)) / perEpsilon;
   if (!(m > 0 && Math.abs(m - 1) >= smallestContrast)) return null;
   const used = new Uint8Array(size);
-  const sd = new Float64Array(size);
-  const [one, x, y, bend, ofStrongest, ofSolution] = Array.from(
-    { length: 6 },
-    () => new Float64Array(size),
-  ) as [Float64Array, Float64Array, Float64Array, Float64Array, Float64Array, Float64Array];
-  for (const j of kept) {
-    const i = points.at[j]!;
-    used[i] = 1;
-    sd[i] = Math.hypot(points.sdY[j]!, slope * points.sdX[j]!);
-    one[i] = 1 / sd[i]!;
-    x[i] = points.x[j]! / sd[i]!;
-    y[i] = points.y[j]! / sd[i]!;
-    bend[i] = (slope * (m - 1) * perEpsilon * points.x[j]! ** 2) / sd[i]!;
-    ofStrongest[i] = (-slope * points.sdX[j]!) / sd[i]!;
-    ofSolution[i] = points.sdY[j]! / sd[i]!;
-  }
-  const basis = orthonormal([one, x]);
+  const sd = points.sdY.map((value, j) => Math.hypot(value, slope * points.sdX[j]!));
+  for (const j of kept) used[points.at[j]!] = 1;
+  const spread = (value: (j: number) => number): Float64Array => {
+    const onGrid = new Float64Array(size);
+    for (const j of kept) onGrid[points.at[j]!] = value(j) / sd[j]!;
+    return onGrid;
+  };
+  const y = spread((j) => points.y[j]!);
+  const bend = spread((j) => slope * (m - 1) * perEpsilon * points.x[j]! ** 2);
+  const basis = orthonormal([spread(() => 1), spread((j) => points.x[j]!)]);
   return {
     used,
     basis,
     y: projectedOut(basis, y),
     bend: projectedOut(basis, bend),
-    ofStrongest,
-    ofSolution,
-    count: kept.length,
+    ofStrongest: spread((j) => -slope * points.sdX[j]!),
+    ofSolution: spread((j) => points.sdY[j]!),
   };
 }
 

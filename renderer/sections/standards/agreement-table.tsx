@@ -41,7 +41,7 @@ export function AgreementTable({ sheet, standards }: AgreementTableProps) {
               class="number"
               title="Relative standard uncertainty of the scale of ε of the species"
             >
-              u of ε, %
+              u of their ε, %
             </th>
           </tr>
         </thead>
@@ -52,11 +52,9 @@ export function AgreementTable({ sheet, standards }: AgreementTableProps) {
                 <td>{standard}</td>
                 <td class="number">{numberText(100 * (factor - 1), 2)}</td>
                 <td class="number">{numberText(1000 * offset, 2)}</td>
-                {index === 0 && (
-                  <td class="number" rowSpan={solutions.length}>
-                    {figuresText(100 * relativeScaleUncertainty)}
-                  </td>
-                )}
+                <td class="number">
+                  {index === 0 ? figuresText(100 * relativeScaleUncertainty) : ''}
+                </td>
               </tr>
             )),
           )}
