@@ -33,5 +33,6 @@ export function absorbanceScale({ absorbancePerEpsilon, epsilon, usable }: Solut
   for (const [i, value] of epsilon.entries()) {
     if (usable[i] === 1 && value > largest) largest = value;
   }
-  return largest > 0 ? 1 / largest : 1;
+  const scale = 1 / largest;
+  return Number.isFinite(scale) ? scale : 1;
 }
