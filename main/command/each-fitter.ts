@@ -66,7 +66,11 @@ class Thread {
   private failure: unknown;
 
   constructor(work: EachWork) {
-    this.worker = new Worker(new URL('./each-worker.mjs', import.meta.url), { workerData: work });
+    this.worker = new Worker(new URL('./each-worker.mjs', import.meta.url), {
+      workerData: work,
+      // what the command itself was started with (a script in its arguments, say) is not for its threads
+      execArgv: [],
+    });
     this.worker.on('message', (lines: EachLines) => this.waiting.shift()?.resolve(lines));
     this.worker.on('error', (error) => this.fail(error));
     this.worker.on('exit', () => this.fail(new Error('A thread ended before its work was done.')));
