@@ -117,11 +117,12 @@ export function quantifyAliquot(
     crude,
     standardsAt: (strayLight) => prepared.libraryAt(strayLight).standards,
     noiseSamples: library.noiseSamples,
+    noiseLevelSeen: library.noiseLevelSeen,
     pathLengthCm,
     settings,
     what,
   });
-  const sources = errorSources(unmixing, { levelSeen: library.noiseLevelSeen });
+  const sources = errorSources(unmixing);
   const estimate = estimateOf(unmixing, sources);
   const products = productPositions(prepared);
   const dilution = dilutionOf(aliquot);

@@ -41,7 +41,7 @@ interface Part {
 }
 
 function pointParts(unmixing: Unmixing, gradient: Float64Array): Part[] {
-  const { baseline, species, instrumentLevel, excess, shiftNm } = unmixing;
+  const { baseline, species, lackOfFit, shiftNm } = unmixing;
   const size = species.length;
   const alone = noiseVariance(unmixing, size, gradient);
   const withBaseline = noiseVariance(unmixing, size + baseline.length, gradient);
@@ -51,19 +51,19 @@ function pointParts(unmixing: Unmixing, gradient: Float64Array): Part[] {
       ? noiseVariance(unmixing, size + baseline.length + shifts, gradient)
       : withBaseline;
   const all = noiseVariance(unmixing, unmixing.fit.whitened.length, gradient);
-  const more = (variance: number, than: number) => instrumentLevel * Math.max(variance - than, 0);
+  const fits = 1 - lackOfFit;
   return [
-    { source: 'photometric noise', variance: instrumentLevel * alone },
-    { source: 'baseline', variance: more(withBaseline, alone) },
-    { source: 'wavelength offset', variance: more(withShift, withBaseline) },
-    { source: 'stray light', variance: more(all, withShift) },
-    { source: 'lack of fit', variance: all * Math.max(excess - instrumentLevel, 0) },
+    { source: 'photometric noise', variance: fits * alone },
+    { source: 'baseline', variance: fits * Math.max(withBaseline - alone, 0) },
+    { source: 'wavelength offset', variance: fits * Math.max(withShift - withBaseline, 0) },
+    { source: 'stray light', variance: fits * Math.max(all - withShift, 0) },
+    { source: 'lack of fit', variance: lackOfFit * all },
   ];
 }
 
-/** Variance of the fraction from photometric noise of unit level if only these first columns were fitted. */
+/** Variance of the fraction from what the points have for themselves if only these first columns were fitted. */
 function noiseVariance(
-  { fit, species, at, correlation }: Unmixing,
+  { fit, species, at, correlation, pointVariance }: Unmixing,
   columns: number,
   gradient: Float64Array,
 ): number {
@@ -75,7 +75,7 @@ function noiseVariance(
   for (let k = 0; k < species.length; k++) {
     const row = rows[k]!;
     for (let i = 0; i < points; i++) {
-      gain[i]! += gradient[k]! * row[i]! * Math.sqrt(fit.noiseVariance[i]! / fit.variance[i]!);
+      gain[i]! += gradient[k]! * row[i]! * Math.sqrt(pointVariance[i]! / fit.variance[i]!);
     }
   }
   for (let m = points; m < points + priors.length; m++) {

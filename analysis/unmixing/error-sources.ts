@@ -22,16 +22,9 @@ export interface ErrorSources {
   }[];
 }
 
-/** How the noise of the standards is known. */
-export interface StandardsNoise {
-  readonly levelSeen: boolean;
-}
-
-/** @param levelSeen true where the standards' noise has been set by what their solutions show */
-export function errorSources(unmixing: Unmixing, { levelSeen }: StandardsNoise): ErrorSources {
+export function errorSources(unmixing: Unmixing): ErrorSources {
   const { amounts, covariance, standards } = unmixing;
   const size = amounts.length;
-  const level = levelSeen ? 1 : Math.sqrt(unmixing.instrumentLevel);
   return {
     points: covariance.slice(0, size).map((row) => row.slice(0, size)),
     unseen: unseenCovariance(unmixing),
@@ -46,7 +39,7 @@ export function errorSources(unmixing: Unmixing, { levelSeen }: StandardsNoise):
     standardsNoise: standards.flatMap((standard, k) =>
       standard.solutions.map((solution, s) => ({
         standard: solution.standard,
-        effects: standardNoiseEffects(unmixing, k, s, level),
+        effects: standardNoiseEffects(unmixing, k, s),
       })),
     ),
   };
@@ -112,11 +105,11 @@ function standardNoiseEffects(
   unmixing: Unmixing,
   species: number,
   solution: number,
-  level: number,
 ): Float64Array[] {
-  const { fit, at, amounts, pathLengthCm, molarAbsorptivity, correlation } = unmixing;
+  const { fit, at, amounts, pathLengthCm, molarAbsorptivity, correlation, standardsLevel } =
+    unmixing;
   const part = partOf(molarAbsorptivity, species, solution);
-  const strength = -level * pathLengthCm * Math.max(amounts[species]!, 0);
+  const strength = -Math.sqrt(standardsLevel) * pathLengthCm * Math.max(amounts[species]!, 0);
   return fit.gain.slice(0, amounts.length).map((gain) => {
     const effect = new Float64Array(part.sd.length);
     for (const [j, i] of at.entries()) {

@@ -6,10 +6,10 @@ import type { WeightedFit } from './weighted-fit.ts';
 interface NoisyFit {
   /** Positions of the fitted points. */
   readonly at: Int32Array;
-  readonly fit: Pick<WeightedFit, 'gain' | 'priorGain' | 'noiseVariance'>;
+  readonly fit: Pick<WeightedFit, 'gain' | 'priorGain'>;
   readonly correlation: NoiseCorrelation;
-  /** Factor on the variance of the points. */
-  readonly excess: number;
+  /** Variance of each point. */
+  readonly pointVariance: Float64Array;
 }
 
 /**
@@ -17,8 +17,8 @@ interface NoisyFit {
  * the points *and* how they lean on each other (the sandwich form; Huber 1967, White 1980), and from
  * priors. Parameters × parameters.
  */
-export function pointCovariance({ at, fit, correlation, excess }: NoisyFit): Float64Array[] {
-  const sd = fit.noiseVariance.map(Math.sqrt);
+export function pointCovariance({ at, fit, correlation, pointVariance }: NoisyFit): Float64Array[] {
+  const sd = pointVariance.map(Math.sqrt);
   const rows = fit.gain.map((row) =>
     spreadOut(
       at,
@@ -27,9 +27,6 @@ export function pointCovariance({ at, fit, correlation, excess }: NoisyFit): Flo
   );
   const moved = rows.map((row) => correlate(correlation.rho, row));
   return rows.map((a, k) =>
-    Float64Array.from(
-      moved,
-      (b, l) => excess * dot(a, b) + dot(fit.priorGain[k]!, fit.priorGain[l]!),
-    ),
+    Float64Array.from(moved, (b, l) => dot(a, b) + dot(fit.priorGain[k]!, fit.priorGain[l]!)),
   );
 }

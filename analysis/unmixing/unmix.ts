@@ -1,35 +1,31 @@
 import { Refusal } from '../refusal.ts';
 import type { FitSettings } from '../sheet/defaults.ts';
 import type { NoiseCorrelation } from '../spectrum/correlated-noise.ts';
-import {
-  estimateNoise,
-  levelsOfSquares,
-  roundingSd,
-  twoParts,
-} from '../spectrum/estimate-noise.ts';
 import type { NoiseModel } from '../spectrum/noise.ts';
-import type { Spectrum } from '../spectrum/spectrum.ts';
-import { withoutStrayLight } from '../spectrum/stray-light.ts';
 import type { SampledNoise } from '../standards/contrasts.ts';
-import { type MolarAbsorptivity, molarAbsorptivityAt } from '../standards/molar-absorptivity.ts';
+import type { MolarAbsorptivity } from '../standards/molar-absorptivity.ts';
 import type { SpeciesStandard } from '../standards/species-standard.ts';
 import { choosePoints, pointUse, usedPoints } from './choose-points.ts';
-import { type BaselineName, type Design, designOf } from './design.ts';
-import { fitInstrument, type InstrumentError, type LinearModel } from './instrument-fit.ts';
-import { cleanedResidual, type FoundBand, noiseOfFit } from './noise-of-fit.ts';
+import type { BaselineName, Design } from './design.ts';
+import { firstNoise, noiseModelOf } from './noise-model.ts';
+import { type FoundBand, noiseOfFit } from './noise-of-fit.ts';
 import { nonNegativeLeastSquares } from './non-negative.ts';
 import { pointCovariance } from './point-covariance.ts';
-import { shiftSlope, standardsVariance } from './standards-on-points.ts';
-import { modelled, type WeightedFit, weightedFit } from './weighted-fit.ts';
+import {
+  largestShiftNm,
+  type Measurement,
+  solveWith,
+  standardsAt,
+  statedStrayLight,
+} from './solve.ts';
+import { shiftSlope } from './standards-on-points.ts';
+import type { WeightedFit } from './weighted-fit.ts';
 
-export interface UnmixInput {
-  readonly crude: Spectrum;
-  /** The standards with this fraction of stray light taken out of them. */
-  readonly standardsAt: (strayLight: number) => readonly SpeciesStandard[];
+export interface UnmixInput extends Measurement {
   /** Noise that other measurements of the sheet show. */
   readonly noiseSamples: readonly SampledNoise[];
-  readonly pathLengthCm: number;
-  readonly settings: FitSettings;
+  /** True where the level of the standards' noise was found between solutions of one species. */
+  readonly noiseLevelSeen: boolean;
   /** For the message of a refusal: "aliquot a1". */
   readonly what: string;
 }
@@ -66,10 +62,14 @@ export interface Unmixing {
   readonly noiseFrom: FitSettings['noiseFrom'];
   /** How the noise of one point leans on that of its neighbours. */
   readonly correlation: NoiseCorrelation;
-  /** Factor on the point variance for lack of fit (and for the scale of an estimated noise). */
-  readonly excess: number;
-  /** The same factor without lack of fit. */
+  /** Variance of each fitted point that is this aliquot's own: photometric noise with lack of fit. */
+  readonly pointVariance: Float64Array;
+  /** Share of it that is lack of fit, 0 to 1. */
+  readonly lackOfFit: number;
+  /** Factor on the variance of the weights that the residual calls for, lack of fit aside. */
   readonly instrumentLevel: number;
+  /** Factor on the variance of the standards' noise. */
+  readonly standardsLevel: number;
   /** Degrees of freedom behind `excess` and the correlation; Infinity where the noise is known and nothing lacks. */
   readonly df: number;
   /** What stands out most from the residual; null where there are too few points to look. */
@@ -80,17 +80,6 @@ export interface Unmixing {
   readonly covariance: readonly Float64Array[];
   readonly fit: WeightedFit;
 }
-
-/** Smallest number of degrees of freedom from which a noise of its own is taken. */
-const fewestForNoise = 1;
-/** and from which its two parts are told apart. */
-const fewestForTwoParts = 30;
-/** A shift beyond this is not an instrument's wavelength error but another spectrum. nm */
-const largestShiftNm = 2;
-/** Stray light beyond this is a fault of the instrument, not an error to fit. */
-const largestStrayLight = 0.05;
-/** Step of the slope with stray light. */
-const strayLightStep = 1e-5;
 
 /**
  * Weighted least squares of one crude spectrum on the standards and the baseline, on the crude's
@@ -104,7 +93,7 @@ export function unmix(input: UnmixInput): Unmixing {
   const at = usedPoints(use);
   refuseTooFew(input, standards.length, use, at);
   const first = solveWith(input, at, firstNoise(input));
-  const { noise, known } = noiseModelOf(input, at, first);
+  const { noise, known, alike } = noiseModelOf(input, input.noiseSamples, at, first);
   const solved = settings.noise ? first : solveWith(input, at, noise);
   const { fit, sizes, molarAbsorptivity, design } = solved;
   const nm = Float64Array.from(at, (i) => crude.wavelengthNm[i]!);
@@ -112,10 +101,12 @@ export function unmix(input: UnmixInput): Unmixing {
     settings.shift === 'none' && known
       ? [shiftSlope(molarAbsorptivity, at, pathLengthCm, fit.parameters)]
       : [];
-  const ofFit = noiseOfFit({ at, nm, fit, beside }, input.noiseSamples, settings.noiseFrom);
+  const ofFit = noiseOfFit({ at, nm, fit, beside }, alike, settings.noiseFrom);
+  const { excess, instrumentLevel, correlation } = ofFit;
+  const pointVariance = ownVariance(fit, excess, input.noiseLevelSeen);
   const size = standards.length;
   const drawn = drawnParameters(fit, solved.measured, design, size);
-  const covariance = pointCovariance({ at, fit, ...ofFit });
+  const covariance = pointCovariance({ at, fit, correlation, pointVariance });
   const sdOf = (k: number): number => Math.sqrt(covariance[k]![k]!);
   const shifts = settings.shift === 'common' ? 1 : 0;
   const baselines = design.baseline.length;
@@ -142,132 +133,17 @@ export function unmix(input: UnmixInput): Unmixing {
     },
     noise,
     noiseFrom: settings.noiseFrom,
-    correlation: ofFit.correlation,
-    excess: ofFit.excess,
-    instrumentLevel: ofFit.instrumentLevel,
+    correlation,
+    pointVariance,
+    lackOfFit: Math.max(1 - instrumentLevel / excess, 0),
+    instrumentLevel,
+    standardsLevel: input.noiseLevelSeen ? 1 : instrumentLevel,
     df: ofFit.df,
     band: known ? ofFit.band : null,
     reducedChiSquare: known ? fit.reducedChiSquare : null,
     covariance,
     fit,
   };
-}
-
-interface Solution {
-  readonly standards: readonly SpeciesStandard[];
-  /** Absorbance of the crude at the fitted points, stray light taken out. */
-  readonly measured: Float64Array;
-  readonly fit: WeightedFit;
-  readonly sizes: { readonly shiftNm: number; readonly strayLight: number };
-  readonly molarAbsorptivity: readonly MolarAbsorptivity[];
-  readonly design: Design;
-}
-
-interface State extends LinearModel {
-  readonly standards: readonly SpeciesStandard[];
-  readonly moved: readonly MolarAbsorptivity[];
-  readonly design: Design;
-}
-
-function solveWith(input: UnmixInput, at: Int32Array, noise: NoiseModel): Solution {
-  const { crude, settings, pathLengthCm } = input;
-  const states = new Map<string, State>();
-  const stateAt = (shiftNm: number, strayLight: number): State => {
-    const key = `${shiftNm} ${strayLight}`;
-    const state = states.get(key) ?? freshState(shiftNm, strayLight);
-    states.set(key, state);
-    return state;
-  };
-  const freshState = (shiftNm: number, strayLight: number): State => {
-    const standards = input.standardsAt(strayLight);
-    const moved = standardsAt(standards, crude.wavelengthNm, shiftNm);
-    const design = designOf(moved, crude.wavelengthNm, at, pathLengthCm, settings.baseline);
-    const columns = [...design.species, ...design.baseline.map(({ column }) => column)];
-    const measured = Float64Array.from(at, (i) => withoutStrayLight(crude.values[i]!, strayLight));
-    return { standards, moved, design, columns, measured };
-  };
-  const weighing = (moved: readonly MolarAbsorptivity[]) => (parameters: Float64Array) =>
-    standardsVariance(moved, at, pathLengthCm, parameters);
-  const asSolution = (
-    sizes: Solution['sizes'],
-    { standards, measured, moved, design }: State,
-    fit: WeightedFit,
-  ): Solution => ({ standards, measured, fit, sizes, molarAbsorptivity: moved, design });
-  const stated = { shiftNm: 0, strayLight: statedStrayLight(settings) };
-  const start = stateAt(stated.shiftNm, stated.strayLight);
-  if (settings.shift === 'none' && settings.strayLight !== 'fit') {
-    const fit = weightedFit(start.columns, start.measured, noise, weighing(start.moved));
-    return asSolution(stated, start, fit);
-  }
-  const sizesOf = (sizes: Float64Array): Solution['sizes'] => ({
-    shiftNm: settings.shift === 'common' ? sizes[0]! : 0,
-    strayLight: settings.strayLight === 'fit' ? sizes.at(-1)! : stated.strayLight,
-  });
-  const stateOf = (sizes: Float64Array) => {
-    const { shiftNm, strayLight } = sizesOf(sizes);
-    return stateAt(shiftNm, strayLight);
-  };
-  const found = fitInstrument({
-    errors: instrumentErrors(settings, start.measured),
-    modelAt: stateOf,
-    slopesAt: (sizes, parameters) => {
-      const { shiftNm, strayLight } = sizesOf(sizes);
-      const here = stateAt(shiftNm, strayLight);
-      const shift =
-        settings.shift === 'common' ? [shiftSlope(here.moved, at, pathLengthCm, parameters)] : [];
-      if (settings.strayLight !== 'fit') return shift;
-      const more = stateAt(shiftNm, strayLight + strayLightStep);
-      return [...shift, strayLightSlope(here, more, parameters)];
-    },
-    fit: ({ columns, measured }, priors) =>
-      weightedFit(columns, measured, noise, weighing(start.moved), priors),
-  });
-  return asSolution(sizesOf(found.sizes), stateOf(found.sizes), found.fit);
-}
-
-function statedStrayLight({ strayLight }: FitSettings): number {
-  return strayLight === 'fit' ? 0 : strayLight;
-}
-
-function instrumentErrors(settings: FitSettings, measured: Float64Array): InstrumentError[] {
-  const shift: InstrumentError = {
-    range: [-largestShiftNm, largestShiftNm],
-    step: 0.5,
-    settled: 1e-7,
-    priorSd: settings.shiftPriorNm,
-  };
-  // a reading needs less stray light than reaches the detector with it
-  const transmitted = 10 ** -measured.reduce((most, value) => Math.max(most, value), 0);
-  const ceiling = Math.min(largestStrayLight, (0.9 * transmitted) / (1 - 0.9 * transmitted));
-  const stray: InstrumentError = {
-    range: [-0.1 * ceiling, ceiling],
-    step: 0.2 * ceiling,
-    settled: 1e-9,
-    priorSd: null,
-  };
-  return [
-    ...(settings.shift === 'common' ? [shift] : []),
-    ...(settings.strayLight === 'fit' ? [stray] : []),
-  ];
-}
-
-/** ∂(model - measured)/∂(stray light) by a forward difference. */
-function strayLightSlope(here: LinearModel, more: LinearModel, parameters: Float64Array) {
-  const departure = ({ columns, measured }: LinearModel): Float64Array => {
-    const fitted = modelled(columns, parameters);
-    return fitted.map((value, i) => value - measured[i]!);
-  };
-  const [before, after] = [departure(here), departure(more)];
-  return before.map((value, i) => (after[i]! - value) / strayLightStep);
-}
-
-function standardsAt(
-  standards: readonly SpeciesStandard[],
-  wavelengthNm: Float64Array,
-  shiftNm: number,
-): MolarAbsorptivity[] {
-  const target = shiftNm === 0 ? wavelengthNm : wavelengthNm.map((nm) => nm - shiftNm);
-  return standards.map((standard) => molarAbsorptivityAt(standard, target));
 }
 
 /** With a free shift, only points that the standards cover at every shift that may be tried. */
@@ -287,57 +163,19 @@ function usableAtEveryShift(
   );
 }
 
-function firstNoise({ crude, settings }: UnmixInput): NoiseModel {
-  return (
-    settings.noise ??
-    estimateNoise(crude.wavelengthNm, crude.values) ?? { constant: 1e-3, transmittance: 0 }
-  );
-}
-
-function noiseModelOf(
-  input: UnmixInput,
-  at: Int32Array,
-  solution: Solution,
-): { noise: NoiseModel; known: boolean } {
-  const { crude, settings, what } = input;
-  if (settings.noise) return { noise: settings.noise, known: true };
-  const { fit } = solution;
-  if (fit.df >= fewestForTwoParts)
-    return { noise: noiseOfSquares(input, at, solution), known: true };
-  const nm = Float64Array.from(at, (i) => crude.wavelengthNm[i]!);
-  const estimate = estimateNoise(nm, fit.residual, fit.fitted, roundingSd(crude.values));
-  if (estimate) return { noise: estimate, known: true };
-  if (fit.df < fewestForNoise) {
-    throw new Refusal({
-      code: 'noise-unknown',
-      message: `There are as many unknowns as points (${at.length}), so the noise cannot be told from the spectrum and no interval can be given.`,
-      where: { what },
-      mend: 'Give the noise of the instrument in the fit section ("noise"), widen the window, or use more points.',
-    });
-  }
-  const rms = Math.sqrt(fit.residual.reduce((sum, value) => sum + value * value, 0) / fit.df);
-  return { noise: { constant: rms, transmittance: 0 }, known: false };
-}
-
 /**
- * Both parts of the noise from the squares of the residual (what a wavelength offset or a band
- * without a standard may have put there taken out, spikes cut) together with what the standards of
- * the sheet show between them; the standards' own part is taken off.
+ * What of the variance of the points is the aliquot's own. Where the standards' part is known for
+ * itself, a variance that is larger than supposed is the aliquot's; else it is both's.
  */
-function noiseOfSquares(input: UnmixInput, at: Int32Array, { fit, molarAbsorptivity }: Solution) {
-  const { crude, pathLengthCm, noiseSamples } = input;
-  const nm = Float64Array.from(at, (i) => crude.wavelengthNm[i]!);
-  const slope = shiftSlope(molarAbsorptivity, at, pathLengthCm, fit.parameters);
-  const { residual, directions } = cleanedResidual({ nm, fit, beside: [slope] });
-  const ofStandards = standardsVariance(molarAbsorptivity, at, pathLengthCm, fit.parameters);
-  const expected = {
-    flat: new Float64Array(at.length).fill(1),
-    rise: fit.fitted.map((absorbance) => 100 ** Math.min(absorbance, 6)),
-  };
-  const kept = 1 - directions / at.length;
-  const own = levelsOfSquares(residual, expected, kept, ofStandards);
-  const others = noiseSamples.flatMap(({ levels }) => levels);
-  return twoParts([...own, ...others], roundingSd(crude.values));
+function ownVariance(
+  { variance, noiseVariance }: WeightedFit,
+  excess: number,
+  standardsKnown: boolean,
+): Float64Array {
+  return noiseVariance.map((noise, i) => {
+    if (!standardsKnown) return excess * noise;
+    return Math.max(excess * variance[i]! - (variance[i]! - noise), 0.1 * excess * noise);
+  });
 }
 
 function drawnParameters(

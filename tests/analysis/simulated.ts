@@ -24,6 +24,8 @@ export interface Conditions {
   readonly standards: readonly number[];
   readonly stock: number;
   readonly dilution: number;
+  /** True: the standards are recorded without noise and offset, and their concentrations are exact. */
+  readonly exactStandards: boolean;
   /** A species without a standard: centre and standard deviation in nm, height over the largest absorbance. */
   readonly hidden: readonly [number, number, number] | null;
   readonly fit: Sheet['fit'];
@@ -43,11 +45,12 @@ export const usual: Conditions = {
   standards: [0.4, 0.9],
   stock: 0.005,
   dilution: 0.003,
+  exactStandards: false,
   hidden: null,
   fit: {},
 };
 
-const bands: Readonly<Record<'arm' | 'mono' | 'bis', Bands>> = {
+export const bands: Readonly<Record<'arm' | 'mono' | 'bis', Bands>> = {
   arm: [[275, 16, 9000]],
   mono: [
     [320, 20, 16000],
@@ -73,6 +76,10 @@ export function simulated(changes: Partial<Conditions>): {
     (_, i) => from + i * made.stepNm,
   );
   const record = recorder(made, nm, gauss);
+  const recordStandard = made.exactStandards
+    ? recorder({ ...made, noise: noNoise, offsetSd: 0 }, nm, gauss)
+    : record;
+  const errors = made.exactStandards ? { stock: 0, dilution: 0 } : made;
   const shape = { arm: 0.2, mono: 0.8 * made.fraction, bis: 0.8 * (1 - made.fraction) };
   const unit = (at: number) =>
     names.reduce((sum, name) => sum + shape[name] * epsilonAt(bands[name], at), 0);
@@ -105,18 +112,18 @@ export function simulated(changes: Partial<Conditions>): {
       relativeStandardUncertainty: made.stock,
     })),
     standards: names.flatMap((name) => {
-      const stockError = 1 + made.stock * gauss();
+      const stockError = 1 + errors.stock * gauss();
       const top = Math.max(...bands[name].map(([, , height]) => height));
       return made.standards.map((peak, index) => {
         const stated = peak / top;
-        const real = stated * stockError * (1 + made.dilution * gauss());
+        const real = stated * stockError * (1 + errors.dilution * gauss());
         return {
           id: `${name}-${index + 1}`,
           species: name,
           stock: `${name}-A`,
           concentrationMolPerL: stated,
           relativeStandardUncertainty: made.dilution,
-          spectrum: { embedded: record((at) => real * epsilonAt(bands[name], at)) },
+          spectrum: { embedded: recordStandard((at) => real * epsilonAt(bands[name], at)) },
         };
       });
     }),
@@ -130,6 +137,8 @@ export function simulated(changes: Partial<Conditions>): {
   };
   return { sheet, truth };
 }
+
+const noNoise = { constant: 0, transmittance: 0 };
 
 function afterSmoothing({ noise, smoothing }: Conditions): Conditions['noise'] {
   const factor = 1 / Math.sqrt(smoothing);
