@@ -34,11 +34,15 @@ export interface PolishedPoint extends SearchPoint {
 export type DampingScale = 'largest-slope' | 'present-slope' | 'size';
 
 const mostSteps = 400;
-const mostPolishing = 40;
+const mostPolishing = 80;
+/** More than rounding raises the sum of squares by at a minimum, less than any barrier. */
+const outOfValley = 0.01;
 /** Beyond this the damped step is nothing beside any parameter. */
 const mostDamping = 1e20;
-/** Cosine between residual and every column from which on the polish does better. */
-const nearlyOrthogonal = 1e-10;
+/** Orthogonality that rounding of the residual leaves at best. */
+const orthogonalToRounding = 1e-14;
+/** Where rounding rules, the next steps wander about the minimum: the best of some is taken. */
+const mostWandering = 4;
 /** A step that takes less than this share of the sum of squares is left to the polish. */
 const littleGain = 1e-15;
 
@@ -59,19 +63,22 @@ export function pointAt(
  * Levenberg and Marquardt's search that only ever goes down: the damped step solves the Jacobian
  * with √damping · scale below it by orthogonal factors (Moré, Lecture Notes in Mathematics 630
  * (1978) 105), the damping follows how well the step kept its promise (Nielsen, IMM-REP-1999-05).
+ *
+ * @param cosine the end: largest cosine between the residual and a column of the Jacobian
  */
 export function descended(
   problem: NonlinearProblem,
   start: SearchPoint,
   rule: DampingScale,
   firstDamping: number,
+  cosine: number,
 ): SearchPoint {
   let point = start;
   let scale = dampingScale(rule, point, null);
   let damping = firstDamping;
   let growth = 2;
   for (let step = 0; step < mostSteps && damping < mostDamping; step++) {
-    if (largestCosine(point) < nearlyOrthogonal) break;
+    if (largestCosine(point) < cosine) break;
     const move = dampedStep(point, scale, damping);
     const next = pointAt(problem, added(point.parameters, move));
     if (next === null || !(next.sumOfSquares < point.sumOfSquares)) {
@@ -97,20 +104,25 @@ export function descended(
  * squares itself no longer shows the way there: it is flat over half the digits of the parameters.
  */
 export function polished(problem: NonlinearProblem, start: SearchPoint): PolishedPoint {
-  let { best, move } = measured(start);
-  for (let round = 0; round < mostPolishing && best.orthogonality > 0; round++) {
-    if (best.rank < best.jacobian.length) break;
-    const next = pointAt(problem, added(best.parameters, move));
+  const first = measured(start);
+  let best = first.point;
+  let { point, move } = first;
+  let wandering = 0;
+  for (let round = 0; round < mostPolishing && wandering < mostWandering; round++) {
+    if (best.orthogonality < orthogonalToRounding || point.rank < point.jacobian.length) break;
+    const next = pointAt(problem, added(point.parameters, move));
     // steps that leave the valley would find another minimum, or a saddle
-    if (next === null || next.sumOfSquares > best.sumOfSquares * (1 + 1e-6)) break;
-    const tried = measured(next);
-    if (!(tried.best.orthogonality < best.orthogonality)) break;
-    ({ best, move } = tried);
+    if (next === null || next.sumOfSquares > best.sumOfSquares * (1 + outOfValley)) break;
+    ({ point, move } = measured(next));
+    if (point.orthogonality < best.orthogonality) {
+      best = point;
+      wandering = 0;
+    } else wandering += 1;
   }
   return best;
 }
 
-function measured(point: SearchPoint): { best: PolishedPoint; move: Float64Array } {
+function measured(point: SearchPoint): { point: PolishedPoint; move: Float64Array } {
   const factors = factorise(point.jacobian);
   const move = factors.solve(point.residual.map((value) => -value));
   const norm = Math.sqrt(point.sumOfSquares);
@@ -118,7 +130,7 @@ function measured(point: SearchPoint): { best: PolishedPoint; move: Float64Array
   const along = Math.sqrt(squares(combined(point.jacobian, move)));
   return {
     move,
-    best: {
+    point: {
       ...point,
       orthogonality: norm > 0 ? along / norm : 0,
       lastStep: relativeStep(move, point.parameters),

@@ -38,6 +38,8 @@ export interface NonlinearFit {
 const orthogonal = 1e-7;
 /** Of each parameter, where the residual is mostly rounding and cannot be orthogonal to anything. */
 const settledStep = 1e-10;
+/** The one from the library's answer, and each restart once. */
+const mostSearches = 10;
 const librarySteps = 6;
 const libraryDamping = 0.01;
 
@@ -61,14 +63,26 @@ export function nonlinearLeastSquares(
 ): NonlinearFit {
   const first = pointAt(problem, start);
   if (first === null) throw new RangeError('the search starts where the model has no value');
-  const near = near_(problem, first);
-  let best = polished(problem, descended(problem, near, 'largest-slope', 1e-3));
-  for (const [rule, damping] of restarts.slice(0, (settings.searches ?? 10) - 1)) {
+  let best = searched(problem, byLibrary(problem, first), 'largest-slope', 1e-3);
+  for (const [rule, damping] of restarts.slice(0, (settings.searches ?? mostSearches) - 1)) {
     if (converged(best)) break;
-    const found = polished(problem, descended(problem, first, rule, damping));
+    const found = searched(problem, first, rule, damping);
     if (converged(found) || found.sumOfSquares < best.sumOfSquares) best = found;
   }
   return fitOf(best);
+}
+
+/** Down until the polish should do better, and on down if it does not. */
+function searched(
+  problem: NonlinearProblem,
+  start: SearchPoint,
+  rule: DampingScale,
+  damping: number,
+): PolishedPoint {
+  const near = descended(problem, start, rule, damping, 1e-4);
+  const found = polished(problem, near);
+  if (converged(found)) return found;
+  return polished(problem, descended(problem, near, rule, damping, 1e-12));
 }
 
 function converged({ orthogonality, lastStep, rank, jacobian }: PolishedPoint): boolean {
@@ -93,30 +107,42 @@ function fitOf(point: PolishedPoint): NonlinearFit {
 /**
  * The library's search in parameters that are 0 at the start and whose columns of the Jacobian have
  * norm 1 there, since its damping knows no units. It keeps bad steps and has no test for being
- * there, so it gets few steps, and its answer is taken only if it is better than the start.
+ * there, so it gets few steps, and the best point it came by is taken.
  */
-function near_(problem: NonlinearProblem, start: SearchPoint): SearchPoint {
+function byLibrary(problem: NonlinearProblem, start: SearchPoint): SearchPoint {
   const unit = Float64Array.from(start.jacobian, (column) => 1 / (Math.sqrt(squares(column)) || 1));
-  const parametersAt = (scaled: ArrayLike<number>): Float64Array =>
-    start.parameters.map((value, k) => value + scaled[k]! * unit[k]!);
   const points = start.residual.length;
-  const answer = levenbergMarquardt(
-    { x: Float64Array.from({ length: points }, (_, i) => i), y: new Float64Array(points) },
-    (scaled) => {
-      const residual = problem.residual(parametersAt(scaled));
-      return (i) => residual[i]!;
-    },
-    {
-      initialValues: start.parameters.map(() => 0),
-      jacobianFunction: (scaled) => {
-        const columns = problem.jacobian(parametersAt(scaled));
-        return (i) => columns.map((column, k) => column[i]! * unit[k]!);
+  let best = start;
+  let last: SearchPoint | null = start;
+  const at = (scaled: readonly number[]): SearchPoint | null => {
+    const parameters = start.parameters.map((value, k) => value + scaled[k]! * unit[k]!);
+    // it asks for every point twice
+    if (last?.parameters.every((value, k) => value === parameters[k])) return last;
+    last = pointAt(problem, parameters);
+    if (last !== null && last.sumOfSquares < best.sumOfSquares) best = last;
+    return last;
+  };
+  try {
+    levenbergMarquardt(
+      { x: Float64Array.from({ length: points }, (_, i) => i), y: new Float64Array(points) },
+      (scaled) => {
+        const point = at(scaled);
+        // NaN ends its search
+        return (i) => point?.residual[i] ?? Number.NaN;
       },
-      damping: libraryDamping,
-      maxIterations: librarySteps,
-      errorTolerance: 1e-300,
-    },
-  );
-  const found = pointAt(problem, parametersAt(answer.parameterValues));
-  return found !== null && found.sumOfSquares < start.sumOfSquares ? found : start;
+      {
+        initialValues: start.parameters.map(() => 0),
+        jacobianFunction: (scaled) => {
+          const point = at(scaled);
+          return (i) => Array.from(unit, (size, k) => (point?.jacobian[k]?.[i] ?? 0) * size);
+        },
+        damping: libraryDamping,
+        maxIterations: librarySteps,
+        errorTolerance: 1e-300,
+      },
+    );
+  } catch {
+    // it throws for singular normal equations and for a single point: what it found before still counts
+  }
+  return best;
 }
