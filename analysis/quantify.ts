@@ -78,7 +78,7 @@ export function prepare(sheet: Sheet, readings: ReadonlyMap<string, Reading>): P
   const stated = fitSettings(sheet);
   const scans = noiseOfScans(sheet, readings);
   const settings: FitSettings =
-    scans && !stated.noise ? { ...stated, noise: scans.model, noiseFrom: 'scans' } : stated;
+    scans?.model && !stated.noise ? { ...stated, noise: scans.model, noiseFrom: 'scans' } : stated;
   const libraries = new Map<number, StandardsLibrary>();
   const libraryAt = (strayLight: number): StandardsLibrary => {
     const known = libraries.get(strayLight);
@@ -133,6 +133,7 @@ export function quantifyAliquot(
     sources,
     settings,
     amounts: amountEvidence(concentrations),
+    products,
     notGiven: [...library.notGiven, ...(dilution.notGiven ? [dilution.notGiven] : [])],
     nameOf: (species) => speciesName(sheet, species),
   });

@@ -7,6 +7,7 @@ import { lookalikeStandards } from './lookalike-standards.ts';
 import { negativeAmount } from './negative-amount.ts';
 import { nonlinearStandard } from './nonlinear-standard.ts';
 import { saturated } from './saturated.ts';
+import { strayLight } from './stray-light.ts';
 import { uncertaintyNotGiven } from './uncertainty-not-given.ts';
 import { unexplainedBand } from './unexplained-band.ts';
 import { wavelengthOffset } from './wavelength-offset.ts';
@@ -14,6 +15,7 @@ import { wavelengthOffset } from './wavelength-offset.ts';
 /** Every doubt, in the order in which a chemist should look at them. */
 const tests: readonly DoubtTest[] = [
   saturated,
+  strayLight,
   wavelengthOffset,
   unexplainedBand,
   lookalikeStandards,

@@ -12,6 +12,8 @@ export interface Evidence {
   readonly settings: FitSettings;
   /** What the split says of each species, in the order of the unmixing. */
   readonly amounts: readonly AmountEvidence[];
+  /** Positions of the products among the species. */
+  readonly products: readonly number[];
   /** Uncertainties that the sheet leaves out, in words: "the stock mono-A". */
   readonly notGiven: readonly string[];
   /** Name of a species for people. */

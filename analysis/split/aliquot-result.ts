@@ -1,6 +1,11 @@
 import type { AmountEvidence } from '../doubts/evidence.ts';
 import type { BaselineName } from '../unmixing/design.ts';
-import { commonCovariance, type ErrorSources, ownCovariance } from '../unmixing/error-sources.ts';
+import {
+  commonCovariance,
+  type ErrorSources,
+  ownCovariance,
+  standardsNoiseOn,
+} from '../unmixing/error-sources.ts';
 import type { Unmixing } from '../unmixing/unmix.ts';
 import type { AmountEstimate } from './amounts.ts';
 import { plainQuantile, studentFactor } from './confidence-set.ts';
@@ -37,6 +42,7 @@ export function amountEvidence(concentrations: readonly ConcentrationResult[]): 
 
 /** The figures of the fit. */
 export function fitResult(unmixing: Unmixing, wavelengthNm: Float64Array): FitResult {
+  const ofInstrument = instrumentSds(unmixing);
   const { at, fit, noise, noiseFrom, baseline, shiftNm, strayLight, reducedChiSquare, df } =
     unmixing;
   const squares = fit.residual.reduce((sum, value) => sum + value * value, 0);
@@ -46,7 +52,7 @@ export function fitResult(unmixing: Unmixing, wavelengthNm: Float64Array): FitRe
     residualRms: Math.sqrt(squares / at.length),
     reducedChiSquare:
       reducedChiSquare !== null && Number.isFinite(reducedChiSquare) ? reducedChiSquare : null,
-    shiftNm: symmetric(shiftNm.value, shiftNm.sd, df),
+    shiftNm: symmetric(shiftNm.value, ofInstrument.shiftNm, df),
     baseline: baseline.map(
       ({ term, value, sd }): { term: BaselineName; absorbance: Quantified } => ({
         term,
@@ -54,10 +60,22 @@ export function fitResult(unmixing: Unmixing, wavelengthNm: Float64Array): FitRe
       }),
     ),
     strayLight: {
-      ...symmetric(strayLight.value, strayLight.sd, df),
+      ...symmetric(strayLight.value, ofInstrument.strayLight, df),
       from: strayLight.sd > 0 ? 'fit' : strayLight.value > 0 ? 'sheet' : 'none',
     },
     noise: { ...noise, from: noiseFrom },
+  };
+}
+
+/** Standard uncertainties of the fitted errors of the instrument, the standards' noise joined to the points'. */
+function instrumentSds(unmixing: Unmixing): { shiftNm: number; strayLight: number } {
+  const { shiftNm, strayLight, species, baseline } = unmixing;
+  const first = species.length + baseline.length;
+  const joined = (sd: number, parameter: number): number =>
+    sd > 0 ? Math.sqrt(sd * sd + standardsNoiseOn(unmixing, parameter)) : 0;
+  return {
+    shiftNm: joined(shiftNm.sd, first),
+    strayLight: joined(strayLight.sd, first + (shiftNm.sd > 0 ? 1 : 0)),
   };
 }
 

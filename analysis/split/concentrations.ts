@@ -24,8 +24,7 @@ export function concentrationsOf(
       cuvetteMolPerL: scaled(estimate, k, { factor: 1, relativeStandardUncertainty: 0 }),
       flaskMolPerL: scaled(estimate, k, dilution),
       detected: estimate.amounts[k]! > limit,
-      // both errors at 5 %: twice the decision limit as long as the noise does not rise with the amount
-      detectionLimitMolPerL: 2 * limit,
+      detectionLimitMolPerL: detectionLimit(estimate, k, limit),
     };
   });
 }
@@ -35,6 +34,22 @@ function decisionLimit(estimate: AmountEstimate, k: number): number {
   const unit = unitVector(estimate, k);
   const { fixed } = variances(estimate, k, unit, 0);
   return studentTQuantile(1 - falseDetection, estimate.df) * Math.sqrt(fixed);
+}
+
+/**
+ * The smallest true amount that is called present in 95 % of spectra (ISO 11843-1, IUPAC 1995): it
+ * stands t · u above the decision limit, u at that amount itself, with the uncertainty that grows
+ * with it. Null where that grows so fast that no amount is found so surely. mol/L in the cuvette.
+ */
+function detectionLimit(estimate: AmountEstimate, k: number, decision: number): number | null {
+  const unit = unitVector(estimate, k);
+  const { fixed, relative } = variances(estimate, k, unit, 0);
+  const t = studentTQuantile(1 - falseDetection, estimate.df);
+  // (x - decision)² = t²(fixed + relative x²), the larger root
+  const a = 1 - t * t * relative;
+  if (!(a > 0)) return null;
+  const c = decision * decision - t * t * fixed;
+  return (decision + Math.sqrt(Math.max(decision * decision - a * c, 0))) / a;
 }
 
 function scaled(estimate: AmountEstimate, k: number, dilution: DilutionFactor): Quantified {

@@ -10,7 +10,8 @@ import { orthonormal, projectedOut } from '../spectrum/vectors.ts';
 import type { SampledNoise } from './contrasts.ts';
 
 export interface NoiseOfScans {
-  readonly model: NoiseModel;
+  /** Null where the scans stand at one absorbance only (blanks) and cannot tell the two parts apart. */
+  readonly model: NoiseModel | null;
   readonly samples: readonly SampledNoise[];
 }
 
@@ -19,7 +20,8 @@ const fewestPoints = 24;
 /**
  * Noise from scans of one and the same cuvette: the scatter of the scans of a group about each
  * other, offset and slope of each scan taken out (a lamp that drifts is a baseline, not noise). A group of one
- * scan is a blank: what is left about a line. Null where the sheet gives none.
+ * scan is a blank: what is left about a line. Null where the sheet gives none. Blanks alone show the noise at
+ * absorbance 0: they then join what standards and crude show, and give no model by themselves.
  */
 export function noiseOfScans(
   sheet: Sheet,
@@ -27,13 +29,14 @@ export function noiseOfScans(
 ): NoiseOfScans | null {
   const departures = (sheet.noiseScans ?? []).flatMap((group) => departuresOf(group, readings));
   if (departures.length === 0) return null;
-  const model = twoParts(departures.flatMap(levels), 0);
-  const samples = departures.map(({ nm, level, values, basis }): SampledNoise => {
+  const found = departures.map(levels);
+  const model = twoParts(found.flat(), 0);
+  const samples = departures.map(({ nm, level, values, basis }, index): SampledNoise => {
     const sd = level.map((absorbance) => Math.sqrt(absorbanceVariance(model, absorbance)));
     const whitened = orthonormal(basis.map((column) => column.map((value, i) => value / sd[i]!)));
     return {
       stepNm: medianStep(nm),
-      levels: [],
+      levels: found[index] ?? [],
       sample: {
         values: projectedOut(
           whitened,
@@ -44,7 +47,15 @@ export function noiseOfScans(
       },
     };
   });
-  return { model, samples };
+  return { model: tellsBothParts(found.flat()) ? model : null, samples };
+}
+
+/** Over which the transmittance part must grow (in variance) to be told from the constant part. */
+const growth = 4;
+
+function tellsBothParts(found: readonly NoiseLevelAt[]): boolean {
+  const rises = found.map(({ rise }) => rise);
+  return Math.max(...rises) > growth * Math.min(...rises);
 }
 
 /** One independent departure of a scan from the others of its group, scaled to the noise of one scan. */

@@ -1,5 +1,6 @@
 import { smoothed } from '../spectrum/correlated-noise.ts';
 import { stencil } from '../spectrum/interpolate.ts';
+import { dot } from '../spectrum/vectors.ts';
 import type { MolarAbsorptivity } from '../standards/molar-absorptivity.ts';
 import type { Unmixing } from './unmix.ts';
 
@@ -101,30 +102,55 @@ export function commonEffects({ points, scale, standardsNoise }: ErrorSources): 
   });
 }
 
+/**
+ * Variance that the point noise of the standards gives to one further parameter of the fit (an
+ * error of the instrument), in its unit squared.
+ *
+ * @param parameter position among the columns of the fit
+ */
+export function standardsNoiseOn(unmixing: Unmixing, parameter: number): number {
+  const gain = unmixing.fit.gain[parameter];
+  if (!gain) return 0;
+  let variance = 0;
+  for (const [k, { solutions }] of unmixing.standards.entries()) {
+    for (const s of solutions.keys()) {
+      const effect = standardNoiseEffect(unmixing, k, s, gain);
+      variance += dot(effect, effect);
+    }
+  }
+  return variance;
+}
+
 function standardNoiseEffects(
   unmixing: Unmixing,
   species: number,
   solution: number,
 ): Float64Array[] {
-  const { fit, at, amounts, pathLengthCm, molarAbsorptivity, correlation, standardsLevel } =
-    unmixing;
+  return unmixing.fit.gain
+    .slice(0, unmixing.amounts.length)
+    .map((gain) => standardNoiseEffect(unmixing, species, solution, gain));
+}
+
+/** Change of what `gain` reads off, per standard deviation of each independent source of noise. */
+function standardNoiseEffect(
+  { at, amounts, pathLengthCm, molarAbsorptivity, correlation, standardsLevel }: Unmixing,
+  species: number,
+  solution: number,
+  gain: Float64Array,
+): Float64Array {
   const part = partOf(molarAbsorptivity, species, solution);
   const strength = -Math.sqrt(standardsLevel) * pathLengthCm * Math.max(amounts[species]!, 0);
-  return fit.gain.slice(0, amounts.length).map((gain) => {
-    const effect = new Float64Array(part.sd.length);
-    for (const [j, i] of at.entries()) {
-      const share = part.share[i]!;
-      if (share === 0) continue;
-      const size = strength * gain[j]! * share;
-      for (let m = i * stencil; m < (i + 1) * stencil; m++) {
-        effect[part.map.index[m]!]! += size * part.map.weight[m]!;
-      }
+  const effect = new Float64Array(part.sd.length);
+  for (const [j, i] of at.entries()) {
+    const share = part.share[i]!;
+    if (share === 0) continue;
+    const size = strength * gain[j]! * share;
+    for (let m = i * stencil; m < (i + 1) * stencil; m++) {
+      effect[part.map.index[m]!]! += size * part.map.weight[m]!;
     }
-    return smoothed(
-      correlation.kernel,
-      effect.map((value, j) => value * part.sd[j]!),
-    );
-  });
+  }
+  for (let j = 0; j < effect.length; j++) effect[j]! *= part.sd[j]!;
+  return smoothed(correlation.kernel, effect);
 }
 
 function partOf(

@@ -134,6 +134,38 @@ function strayLightSlope(here: LinearModel, more: LinearModel, parameters: Float
   return before.map((value, i) => (after[i]! - value) / strayLightStep);
 }
 
+/** The absorbance from which stray light can bend a reading by more than it is read. */
+const strayLightShows = 0.8;
+
+/**
+ * What a little stray light (more than is stated) would add to the model less the measured, absorbance
+ * per unit fraction; null where it is fitted or no point absorbs enough to show it.
+ */
+export function strayLightColumn(
+  input: Measurement,
+  at: Int32Array,
+  { measured, fit, sizes, design }: Solution,
+): Float64Array | null {
+  const { crude, settings, pathLengthCm } = input;
+  if (settings.strayLight === 'fit') return null;
+  if (!measured.some((absorbance) => absorbance > strayLightShows)) return null;
+  const strayLight = sizes.strayLight + strayLightStep;
+  const moved = standardsAt(input.standardsAt(strayLight), crude.wavelengthNm, sizes.shiftNm);
+  const changed = designOf(moved, crude.wavelengthNm, at, pathLengthCm, settings.baseline);
+  const columnsOf = ({ species, baseline }: Design) => [
+    ...species,
+    ...baseline.map(({ column }) => column),
+  ];
+  return strayLightSlope(
+    { columns: columnsOf(design), measured },
+    {
+      columns: columnsOf(changed),
+      measured: Float64Array.from(at, (i) => withoutStrayLight(crude.values[i]!, strayLight)),
+    },
+    fit.parameters,
+  );
+}
+
 export function standardsAt(
   standards: readonly SpeciesStandard[],
   wavelengthNm: Float64Array,

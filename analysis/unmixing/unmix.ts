@@ -1,22 +1,25 @@
 import { Refusal } from '../refusal.ts';
 import type { FitSettings } from '../sheet/defaults.ts';
-import type { NoiseCorrelation } from '../spectrum/correlated-noise.ts';
+import { correlate, type NoiseCorrelation } from '../spectrum/correlated-noise.ts';
 import type { NoiseModel } from '../spectrum/noise.ts';
+import { dot, orthonormal, projectedOut } from '../spectrum/vectors.ts';
 import type { SampledNoise } from '../standards/contrasts.ts';
 import type { MolarAbsorptivity } from '../standards/molar-absorptivity.ts';
 import type { SpeciesStandard } from '../standards/species-standard.ts';
 import { choosePoints, pointUse, usedPoints } from './choose-points.ts';
 import type { BaselineName, Design } from './design.ts';
 import { firstNoise, noiseModelOf } from './noise-model.ts';
-import { type FoundBand, noiseOfFit } from './noise-of-fit.ts';
+import { type FoundBand, type NoiseOfFit, noiseOfFit } from './noise-of-fit.ts';
 import { nonNegativeLeastSquares } from './non-negative.ts';
 import { pointCovariance } from './point-covariance.ts';
 import {
   largestShiftNm,
   type Measurement,
+  type Solution,
   solveWith,
   standardsAt,
   statedStrayLight,
+  strayLightColumn,
 } from './solve.ts';
 import { shiftSlope } from './standards-on-points.ts';
 import type { WeightedFit } from './weighted-fit.ts';
@@ -74,6 +77,9 @@ export interface Unmixing {
   readonly df: number;
   /** What stands out most from the residual; null where there are too few points to look. */
   readonly band: FoundBand | null;
+  /** What a free wavelength offset (nm) and free stray light would come to, where they are not fitted. */
+  readonly shiftHint: Hint | null;
+  readonly strayLightHint: Hint | null;
   /** Null where the noise is known from this residual only. */
   readonly reducedChiSquare: number | null;
   /** Covariance of all parameters of `fit` from noise, lack of fit and priors. */
@@ -97,10 +103,12 @@ export function unmix(input: UnmixInput): Unmixing {
   const solved = settings.noise ? first : solveWith(input, at, noise);
   const { fit, sizes, molarAbsorptivity, design } = solved;
   const nm = Float64Array.from(at, (i) => crude.wavelengthNm[i]!);
-  const beside =
-    settings.shift === 'none' && known
-      ? [shiftSlope(molarAbsorptivity, at, pathLengthCm, fit.parameters)]
-      : [];
+  const shiftColumn =
+    settings.shift === 'none'
+      ? shiftSlope(molarAbsorptivity, at, pathLengthCm, fit.parameters)
+      : null;
+  const strayColumn = strayLightColumn(input, at, solved);
+  const beside = [shiftColumn, strayColumn].filter((column) => column !== null);
   const ofFit = noiseOfFit({ at, nm, fit, beside }, alike, settings.noiseFrom);
   const { excess, instrumentLevel, correlation } = ofFit;
   const pointVariance = ownVariance(fit, excess, input.noiseLevelSeen);
@@ -140,6 +148,8 @@ export function unmix(input: UnmixInput): Unmixing {
     standardsLevel: input.noiseLevelSeen ? 1 : instrumentLevel,
     df: ofFit.df,
     band: known ? ofFit.band : null,
+    shiftHint: hintOf(solved, shiftColumn, ofFit),
+    strayLightHint: hintOf(solved, strayColumn, ofFit),
     reducedChiSquare: known ? fit.reducedChiSquare : null,
     covariance,
     fit,
@@ -161,6 +171,32 @@ function usableAtEveryShift(
       ? pointUse.noStandard
       : reason,
   );
+}
+
+/** One Gauss-Newton step of an error of the instrument that is not in the fit (score test). */
+export interface Hint {
+  readonly value: number;
+  /** With the noise's correlation and level. */
+  readonly sd: number;
+  /** Against independent noise of unit level, as a band's z is. */
+  readonly z: number;
+}
+
+function hintOf(
+  { fit }: Solution,
+  column: Float64Array | null,
+  { correlation, instrumentLevel }: NoiseOfFit,
+): Hint | null {
+  if (!column) return null;
+  const sd = fit.variance.map(Math.sqrt);
+  const whitened = column.map((value, i) => value / sd[i]!);
+  const rest = projectedOut(orthonormal(fit.whitened), whitened);
+  const squares = dot(rest, rest);
+  if (!(squares > 1e-10 * dot(whitened, whitened))) return null;
+  const residual = fit.residual.map((value, i) => value / sd[i]!);
+  const value = dot(rest, residual) / squares;
+  const variance = (instrumentLevel * dot(rest, correlate(correlation.rho, rest))) / squares ** 2;
+  return { value, sd: Math.sqrt(variance), z: value * Math.sqrt(squares) };
 }
 
 /**

@@ -28,6 +28,7 @@ export function alarms(draws: number): void {
     'wavelength-offset',
     'nonlinear-standard',
     'window-sensitive',
+    'saturated',
     'negative-amount',
   ];
   console.log(`  ${'conditions'.padEnd(30)} ${codes.map((code) => code.padStart(19)).join('')}`);
