@@ -46,10 +46,7 @@ const fewestPoints = 24;
 export function noiseCorrelation(samples: readonly NoiseSample[]): NoiseCorrelation {
   const usable = samples.filter((sample) => degreesOf(sample) >= fewestPoints);
   if (usable.length === 0) return independent;
-  const known = usable.map((sample) => {
-    const lags = Math.min(mostLags, Math.floor(sample.values.length / 4));
-    return { sample, sums: lagSums(sample.values, lags), pairs: lagPairs(sample.used, lags) };
-  });
+  const known = usable.map(knownSample);
   const freedom = usable.reduce((sum, sample) => sum + degreesOf(sample), 0);
   const last = lastLag(known, freedom);
   if (last === 0) return { ...independent, df: freedom };
@@ -174,6 +171,19 @@ function expectedRaw(known: readonly KnownSample[], rho: Float64Array, lags: num
     }
   }
   return sum.map((value, lag) => (pairs[lag]! > 0 ? value / pairs[lag]! : 0));
+}
+
+/** Sums of samples: those of the standards come again with every aliquot. */
+const knownSums = new WeakMap<NoiseSample, KnownSample>();
+
+function knownSample(sample: NoiseSample): KnownSample {
+  const before = knownSums.get(sample);
+  if (before) return before;
+  const lags = Math.min(mostLags, Math.floor(sample.values.length / 4));
+  const sums = lagSums(sample.values, lags);
+  const known = { sample, sums, pairs: lagPairs(sample.used, lags) };
+  knownSums.set(sample, known);
+  return known;
 }
 
 interface KnownSample {

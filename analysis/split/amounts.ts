@@ -25,10 +25,11 @@ export function quadratic(
   b: Float64Array = a,
 ): number {
   let sum = 0;
-  for (const [k, row] of matrix.entries()) {
+  for (let k = 0; k < matrix.length; k++) {
     const weight = a[k]!;
     if (weight === 0) continue;
-    for (const [l, value] of row.entries()) sum += weight * b[l]! * value;
+    const row = matrix[k]!;
+    for (let l = 0; l < row.length; l++) sum += weight * b[l]! * row[l]!;
   }
   return sum;
 }

@@ -3,8 +3,6 @@ import { studentTQuantile } from '../distributions/student-t.ts';
 import { acceptance } from './bounded-mean.ts';
 
 export const confidence = 0.95;
-/** From here on a bound no longer shows in the acceptance region (in standard deviations). */
-const farFromBound = 5;
 /** 97.5 % quantile of the normal. */
 export const plainQuantile = normalQuantile((1 + confidence) / 2);
 
@@ -66,7 +64,8 @@ function accepted({ departure, sd, upper, df }: BoundedParameter, value: number)
   const unit = sd(value) * widening;
   const mean = value / unit;
   const room = upper === Number.POSITIVE_INFINITY ? upper : (upper - value) / unit;
-  if (mean > farFromBound && room > farFromBound) return Math.abs(z) <= plainQuantile;
+  // a bound outside the two-sided region does not show in it
+  if (mean >= plainQuantile && room >= plainQuantile) return Math.abs(z) <= plainQuantile;
   const [low, high] = acceptance(mean, mean + room, confidence);
   return z >= low && z <= high;
 }

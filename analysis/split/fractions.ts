@@ -1,4 +1,4 @@
-import { type AmountEstimate, varianceOf } from './amounts.ts';
+import { type AmountEstimate, quadratic, varianceOf } from './amounts.ts';
 import { confidenceInterval } from './confidence-set.ts';
 import type { Quantified, RatioResult, SplitFraction } from './results.ts';
 
@@ -42,11 +42,7 @@ export function fractionAmong(
   if (!(sum > sumMustStand * spread) || value === null) {
     return { value, standardUncertainty: null, interval95: [0, 1] };
   }
-  const test = (fraction: number) => {
-    const weights = sumWeights.map((weight) => -fraction * weight);
-    weights[k]! += 1;
-    return { distance: dot(weights, estimate.amounts), ...varianceOf(estimate, weights) };
-  };
+  const test = testOf(estimate, k, sumWeights);
   const raw = estimate.amounts[k]! / sum;
   const at = test(raw);
   const interval95 = confidenceInterval({
@@ -60,6 +56,30 @@ export function fractionAmong(
     sd: (fraction) => Math.sqrt(test(fraction).variance) / sum,
   });
   return { value, standardUncertainty: Math.sqrt(at.variance) / sum, interval95 };
+}
+
+/** T(f) = c_k - f Σc with its variance, a parabola in f, and the degrees of freedom behind it. */
+function testOf(estimate: AmountEstimate, k: number, sumWeights: Float64Array) {
+  const unit = new Float64Array(sumWeights.length);
+  unit[k] = 1;
+  const parabola = (matrix: readonly Float64Array[]) => {
+    const square = quadratic(unit, matrix);
+    const cross = quadratic(unit, matrix, sumWeights);
+    const plain = quadratic(sumWeights, matrix);
+    return (f: number) => Math.max(square - f * (2 * cross - f * plain), 0);
+  };
+  const [own, common] = [parabola(estimate.own), parabola(estimate.common)];
+  const [amount, sum] = [estimate.amounts[k]!, dot(sumWeights, estimate.amounts)];
+  return (fraction: number) => {
+    const ofPoints = own(fraction);
+    const variance = ofPoints + common(fraction);
+    const isKnown = ofPoints === 0 || estimate.df === Number.POSITIVE_INFINITY;
+    return {
+      distance: amount - fraction * sum,
+      variance,
+      df: isKnown ? Number.POSITIVE_INFINITY : (variance / ofPoints) ** 2 * estimate.df,
+    };
+  };
 }
 
 function ratioOf(estimate: AmountEstimate, of: number, to: number): Quantified {

@@ -60,10 +60,11 @@ export function pooledFraction(
 /** gradientᵀ · effects, one entry a source. */
 export function projected(gradient: Float64Array, effects: readonly Float64Array[]): Float64Array {
   const out = new Float64Array(effects[0]?.length ?? 0);
-  for (const [k, row] of effects.entries()) {
+  for (let k = 0; k < effects.length; k++) {
     const weight = gradient[k]!;
     if (weight === 0) continue;
-    for (const [i, value] of row.entries()) out[i]! += weight * value;
+    const row = effects[k]!;
+    for (let i = 0; i < row.length; i++) out[i]! += weight * row[i]!;
   }
   return out;
 }

@@ -23,6 +23,8 @@ interface SolutionPart {
   readonly map: Interpolation;
   /** Share of this solution in ε at each target point, times its factor. */
   readonly share: Float64Array;
+  /** Share times interpolation: what each of the solution's own points gives to each target point. */
+  readonly gives: Gives;
   /** Noise of the solution's own points, L mol⁻¹ cm⁻¹. */
   readonly sd: Float64Array;
 }
@@ -37,6 +39,32 @@ interface Known {
 /** The crude's grid and those of a few tried shifts; a batch of spectra on one grid asks for the first only. */
 const mostGrids = 4;
 const knownOf = new WeakMap<SpeciesStandard, Known[]>();
+
+/** The entries of a sparse matrix that are not 0, target point by target point. */
+export interface Gives {
+  /** Where each target point's entries begin; one more than there are target points. */
+  readonly start: Int32Array;
+  /** The solution's own point. */
+  readonly point: Int32Array;
+  readonly value: Float64Array;
+}
+
+function givesOf(map: Interpolation, share: Float64Array): Gives {
+  const start = new Int32Array(map.points + 1);
+  const point = new Int32Array(map.index.length);
+  const value = new Float64Array(map.index.length);
+  let count = 0;
+  for (let i = 0; i < map.points; i++) {
+    for (let k = i * stencil; k < (i + 1) * stencil; k++) {
+      const entry = share[i]! * map.weight[k]!;
+      if (entry === 0) continue;
+      point[count] = map.index[k]!;
+      value[count++] = entry;
+    }
+    start[i + 1] = count;
+  }
+  return { start, point: point.slice(0, count), value: value.slice(0, count) };
+}
 
 /**
  * Brings the standards of one species to the target wavelengths and joins them point by point,
@@ -101,7 +129,12 @@ function joinedAt(standard: SpeciesStandard, targetNm: Float64Array): MolarAbsor
     sd[i] = Math.sqrt(sd[i]!);
     if (total[i] === 0) epsilon[i] = Number.NaN;
   }
-  const parts = found.map(({ map, share, solution }) => ({ map, share, sd: solution.sd }));
+  const parts = found.map(({ map, share, solution }) => ({
+    map,
+    share,
+    gives: givesOf(map, share),
+    sd: solution.sd,
+  }));
   return { species: standard.species, epsilon, slope, sd, parts };
 }
 

@@ -1,5 +1,6 @@
 import { normalCdf } from '../distributions/normal.ts';
 import type { NoiseCorrelation } from '../spectrum/correlated-noise.ts';
+import { type BandTemplates, bandTemplates, stepOf, widthsNm } from './band-templates.ts';
 
 /** A Gaussian band that the residual seems to hold. */
 export interface Band {
@@ -12,10 +13,7 @@ export interface Band {
   readonly z: number;
 }
 
-/** Widths of the bands looked for, standard deviation in nm. */
-const widthsNm = [4, 8, 15, 25] as const;
 const smallestSample = 20;
-const farInWidths = 4;
 
 export interface Scan {
   /** Wavelengths of the fitted points, ascending. */
@@ -31,28 +29,107 @@ export interface Scan {
 /**
  * Matched-filter scan of a whitened residual: a Gaussian band at every place and of several widths,
  * made orthogonal to the model. Null where there are too few points to look. The band returned
- * stands out most once `correlation` is allowed for.
+ * stands out most once `correlation` is allowed for. Places are looked through on sums over short
+ * blocks first; those that come near the strongest are then looked at point by point.
  */
 export function strongestBand(scan: Scan, correlation: NoiseCorrelation): Band | null {
   const { nm } = scan;
   if (nm.length < smallestSample) return null;
   const step = stepOf(nm);
+  const wholeScan = blocksOf(scan, 1);
+  const looked = bandTemplates(nm).map((templates) => {
+    const inflation = noiseInflation(correlation, step, templates.widthNm);
+    return {
+      templates,
+      inflation,
+      ...roughSizes(templates, blocksOf(scan, templates.points)),
+    };
+  });
+  // no place whose most is below what some place has at least can be the strongest
+  let atLeast = 0;
+  for (const { least, inflation } of looked) {
+    for (let c = 0; c < least.length; c++) atLeast = Math.max(atLeast, least[c]! / inflation);
+  }
   let best: Band | null = null;
   let bestSize = 0;
-  for (const widthNm of widthsNm) {
-    const stride = Math.max(1, Math.round(widthNm / 4 / step));
-    const inflation = noiseInflation(correlation, step, widthNm);
-    for (let centre = 0; centre < nm.length; centre += stride) {
-      const { match, squares, whole } = matched(scan, nm[centre]!, widthNm);
+  for (const { templates, inflation, most } of looked) {
+    const { centres, widthNm } = templates;
+    for (let c = 0; c < centres.length; c++) {
+      if (most[c]! / inflation < atLeast) continue;
+      const { match, squares, whole } = matched(scan.nm, wholeScan, templates, c);
       // what the model can make of the band itself cannot be seen
       if (!(squares > 1e-6 * whole)) continue;
       const z = match / Math.sqrt(squares);
       if (Math.abs(z) / inflation <= bestSize) continue;
       bestSize = Math.abs(z) / inflation;
-      best = { nm: nm[centre]!, widthNm, z, height: match / squares };
+      best = { nm: centres[c]!, widthNm, z, height: match / squares };
     }
   }
   return best;
+}
+
+/** By how much the squared norm of a band without the model may be off on blocks, in shares of the whole. */
+const blockError = 0.01;
+/** and its product with noise: three standard deviations of what a band does within its blocks. */
+const blockNoise = 0.15;
+
+/** What |z| of each template is on the blocks, at the least and at the most. */
+function roughSizes({ from, start, values, squares }: BandTemplates, blocks: Blocks) {
+  const least = new Float64Array(from.length);
+  const most = new Float64Array(from.length);
+  for (let c = 0; c < from.length; c++) {
+    const [first, end, shift] = [start[c]!, start[c + 1]!, from[c]! - start[c]!];
+    const match = Math.abs(dotFrom(values, first, end, blocks.residual, shift));
+    const whole = dotFrom(squares, first, end, blocks.weight, shift);
+    let rest = whole;
+    for (let m = 0; m < blocks.basis.length; m++) {
+      rest -= dotFrom(values, first, end, blocks.basis[m]!, shift) ** 2;
+    }
+    const slack = blockNoise * Math.sqrt(blocks.noise);
+    least[c] =
+      Math.max(match / Math.sqrt(whole) - slack, 0) /
+      Math.sqrt(Math.max(rest, 0) / whole + blockError);
+    most[c] =
+      (match / Math.sqrt(whole) + slack) / Math.sqrt(Math.max(rest / whole - blockError, 1e-12));
+  }
+  return { least, most };
+}
+
+function dotFrom(a: Float64Array, first: number, end: number, b: Float64Array, shift: number) {
+  let sum = 0;
+  for (let i = first; i < end; i++) sum += a[i]! * b[i + shift]!;
+  return sum;
+}
+
+/** Sums over blocks of neighbours of what a band is multiplied with. */
+interface Blocks {
+  /** Residual over standard deviation. */
+  readonly residual: Float64Array;
+  /** 1/variance. */
+  readonly weight: Float64Array;
+  /** Each direction of the basis over the standard deviation. */
+  readonly basis: readonly Float64Array[];
+  /** Mean square of the residual, in variances. */
+  readonly noise: number;
+}
+
+function blocksOf({ sd, residual, basis }: Scan, points: number): Blocks {
+  const summed = (vector: Float64Array | null): Float64Array => {
+    const sums = new Float64Array(Math.ceil(sd.length / points));
+    for (let block = 0, i = 0; block < sums.length; block++) {
+      const end = Math.min(i + points, sd.length);
+      let sum = 0;
+      for (; i < end; i++) sum += (vector === null ? 1 / sd[i]! : vector[i]!) / sd[i]!;
+      sums[block] = sum;
+    }
+    return sums;
+  };
+  return {
+    residual: summed(residual),
+    weight: summed(null),
+    basis: basis.map(summed),
+    noise: dotFrom(residual, 0, residual.length, residual, 0) / residual.length,
+  };
 }
 
 /** z of a band with noise that is correlated from point to point allowed for. */
@@ -94,10 +171,6 @@ export function scanLimit(rangeNm: number, falseAlarm: number, df: number): numb
   return high + (high ** 3 + high) / (4 * df);
 }
 
-export function stepOf(nm: Float64Array): number {
-  return ((nm.at(-1) ?? 0) - (nm[0] ?? 0)) / Math.max(nm.length - 1, 1);
-}
-
 /** The band on the points, whitened. */
 export function bandColumn(
   { nm, sd }: Pick<Scan, 'nm' | 'sd'>,
@@ -111,23 +184,25 @@ export function bandColumn(
  * with the model taken out: |b|² - Σ (b·q)². (The residual has the model taken out already.)
  */
 function matched(
-  { nm, sd, residual, basis }: Scan,
-  place: number,
-  widthNm: number,
+  nm: Float64Array,
+  { residual, weight, basis }: Blocks,
+  { centres, widthNm, first: firsts, end: ends }: BandTemplates,
+  c: number,
 ): { match: number; squares: number; whole: number } {
-  const along = new Float64Array(basis.length);
+  const [place, first, end] = [centres[c]!, firsts[c]!, ends[c]!];
+  const band = new Float64Array(end - first);
   let match = 0;
   let whole = 0;
-  for (let i = 0; i < nm.length; i++) {
+  for (let i = first; i < end; i++) {
     const distance = (nm[i]! - place) / widthNm;
-    if (distance < -farInWidths) continue;
-    if (distance > farInWidths) break;
-    const value = Math.exp(-0.5 * distance * distance) / sd[i]!;
+    const value = Math.exp(-0.5 * distance * distance);
+    band[i - first] = value;
     match += value * residual[i]!;
-    whole += value * value;
-    for (let m = 0; m < basis.length; m++) along[m]! += value * basis[m]![i]!;
+    whole += value * value * weight[i]!;
   }
   let squares = whole;
-  for (const value of along) squares -= value * value;
+  for (let m = 0; m < basis.length; m++) {
+    squares -= dotFrom(band, 0, band.length, basis[m]!, first) ** 2;
+  }
   return { match, squares, whole };
 }

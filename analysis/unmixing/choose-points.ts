@@ -20,7 +20,8 @@ export function choosePoints(
 ): Uint8Array {
   const use = new Uint8Array(crude.values.length);
   const [low, high] = settings.windowNm ?? [0, Number.POSITIVE_INFINITY];
-  for (const [i, nm] of crude.wavelengthNm.entries()) {
+  for (let i = 0; i < use.length; i++) {
+    const nm = crude.wavelengthNm[i]!;
     const absorbance = crude.values[i]!;
     if (nm < low || nm > high) use[i] = pointUse.outsideWindow;
     else if (settings.excludeNm.some(([from, to]) => nm >= from && nm <= to)) {
@@ -35,7 +36,8 @@ export function choosePoints(
 
 /** Positions of the points that are fitted. */
 export function usedPoints(use: Uint8Array): Int32Array {
-  const found: number[] = [];
-  for (const [i, reason] of use.entries()) if (reason === pointUse.used) found.push(i);
-  return Int32Array.from(found);
+  const found = new Int32Array(use.length);
+  let count = 0;
+  for (let i = 0; i < use.length; i++) if (use[i] === pointUse.used) found[count++] = i;
+  return found.slice(0, count);
 }

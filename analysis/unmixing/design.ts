@@ -1,4 +1,5 @@
 import type { FitSettings } from '../sheet/defaults.ts';
+import { taken } from '../spectrum/vectors.ts';
 import type { MolarAbsorptivity } from '../standards/molar-absorptivity.ts';
 
 export type BaselineName = 'offset' | 'slope' | 'scatter';
@@ -22,13 +23,12 @@ export function designOf(
   baseline: FitSettings['baseline'],
 ): Design {
   return {
-    species: standards.map(({ epsilon }) =>
-      Float64Array.from(at, (i) => pathLengthCm * epsilon[i]!),
-    ),
-    baseline: baselineColumns(
-      Float64Array.from(at, (i) => wavelengthNm[i]!),
-      baseline,
-    ),
+    species: standards.map(({ epsilon }) => {
+      const column = taken(epsilon, at);
+      for (let j = 0; j < column.length; j++) column[j]! *= pathLengthCm;
+      return column;
+    }),
+    baseline: baselineColumns(taken(wavelengthNm, at), baseline),
   };
 }
 

@@ -6,7 +6,7 @@ import {
   noiseCorrelation,
 } from '../spectrum/correlated-noise.ts';
 import { type KnownNoise, levelToUse } from '../spectrum/noise-level.ts';
-import { orthonormal, projectedOut } from '../spectrum/vectors.ts';
+import { divided, orthonormal, projectedOut, rooted } from '../spectrum/vectors.ts';
 import type { SampledNoise } from '../standards/contrasts.ts';
 import {
   type Band,
@@ -14,9 +14,9 @@ import {
   type Scan,
   scanLimit,
   sizeAmongNoise,
-  stepOf,
   strongestBand,
 } from './band-scan.ts';
+import { stepOf } from './band-templates.ts';
 import type { WeightedFit } from './weighted-fit.ts';
 
 /** What the residual of a fit says of the noise. */
@@ -71,14 +71,7 @@ export function noiseOfFit(
   const correlation = noiseCorrelation([plain, ...near]);
   const model = orthonormal(fit.whitened);
   const sd = scan.sd;
-  const whole = levelOf(
-    sampleOf(
-      at,
-      fit.residual.map((value, i) => value / sd[i]!),
-      model,
-    ),
-    correlation.rho,
-  );
+  const whole = levelOf(sampleOf(at, divided(fit.residual, sd), model), correlation.rho);
   const raw = levelToUse(whole.variance, whole.df, from);
   const known = { level: raw.level, df: joinedDf(raw.measured ? whole.df : Infinity, correlation) };
   const withoutBand = strongestBand(scan, correlation);
@@ -131,7 +124,7 @@ export function cleanedResidual({ nm, fit, beside }: Omit<FittedPoints, 'at'>): 
   const band = strongestBand(scan, independent);
   const basis =
     band && Math.abs(band.z) > bandOfNote
-      ? orthonormal([...scan.basis, bandColumn(scan, band)])
+      ? orthonormal([bandColumn(scan, band)], scan.basis)
       : scan.basis;
   const whitened = projectedOut(basis, scan.residual);
   const sizes = whitened.map(Math.abs).sort();
@@ -169,7 +162,7 @@ function withBandOut(
   near: readonly NoiseSample[],
   from: KnownNoise['from'],
 ): { correlation: NoiseCorrelation; level: number; band: FoundBand } {
-  const basis = orthonormal([...scan.basis, bandColumn(scan, band)]);
+  const basis = orthonormal([bandColumn(scan, band)], scan.basis);
   const rest = sampleOf(at, projectedOut(basis, scan.residual), basis);
   const correlation = noiseCorrelation([rest, ...near]);
   const { variance, df } = levelOf(rest, correlation.rho);
@@ -197,15 +190,9 @@ function judged(
 }
 
 function scanOf({ nm, fit, beside }: Omit<FittedPoints, 'at'>): Scan {
-  const sd = fit.variance.map(Math.sqrt);
-  const basis = orthonormal([
-    ...fit.whitened,
-    ...beside.map((column) => column.map((value, i) => value / sd[i]!)),
-  ]);
-  const residual = projectedOut(
-    basis,
-    fit.residual.map((value, i) => value / sd[i]!),
-  );
+  const sd = rooted(fit.variance);
+  const basis = orthonormal([...fit.whitened, ...beside.map((column) => divided(column, sd))]);
+  const residual = projectedOut(basis, divided(fit.residual, sd));
   return { nm, sd, residual, basis };
 }
 
@@ -230,7 +217,7 @@ export function spreadOut(at: Int32Array, vector: Float64Array): Float64Array {
   const length = (at.at(-1) ?? -1) - first + 1;
   if (length === at.length) return vector;
   const out = new Float64Array(length);
-  for (const [j, i] of at.entries()) out[i - first] = vector[j]!;
+  for (let j = 0; j < at.length; j++) out[at[j]! - first] = vector[j]!;
   return out;
 }
 

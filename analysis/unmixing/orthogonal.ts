@@ -3,6 +3,7 @@ import { checkShape } from './check-shape.ts';
 import { type HouseholderFactors, householder } from './householder.ts';
 import { powerOfTwoNear, scaledBy } from './power-of-two.ts';
 import { refined } from './refine.ts';
+import { conditionOf } from './small-singular-values.ts';
 
 /** The least-squares solution of a matrix A, made ready for any right-hand side. */
 export interface OrthogonalFactors {
@@ -75,6 +76,9 @@ export function factorise(
   };
 }
 
+/** Below it no singular value is near what rounding makes of nothing. */
+const clearCondition = 1e7;
+
 interface Decomposed {
   readonly rank: number;
   readonly condition: number;
@@ -93,6 +97,15 @@ function decomposed(factors: HouseholderFactors, smallest: number): Decomposed {
     // they are about 1 but for columns of zeros and those below 1e-301, which count as zeros
     return norm > 0.5 ? norm : 1;
   });
+  const condition = conditionOf(upper);
+  if (factors.rows >= size && condition < clearCondition) {
+    return {
+      rank: size,
+      condition,
+      inverse: factors.upperInverse(),
+      nullSpace: [],
+    };
+  }
   const svd = new SingularValueDecomposition(
     new Matrix(upper.map((row) => row.map((value, k) => value / norms[k]!))),
   );

@@ -10,7 +10,8 @@ export function standardsVariance(
   const variance = new Float64Array(at.length);
   for (const [k, { sd }] of standards.entries()) {
     const amount = pathLengthCm * Math.max(parameters[k]!, 0);
-    for (const [j, i] of at.entries()) variance[j]! += (amount * sd[i]!) ** 2;
+    if (amount === 0) continue;
+    for (let j = 0; j < at.length; j++) variance[j]! += (amount * sd[at[j]!]!) ** 2;
   }
   return variance;
 }
@@ -24,7 +25,8 @@ export function shiftSlope(
 ): Float64Array {
   const column = new Float64Array(at.length);
   for (const [k, { slope }] of standards.entries()) {
-    for (const [j, i] of at.entries()) column[j]! -= pathLengthCm * parameters[k]! * slope[i]!;
+    const amount = pathLengthCm * parameters[k]!;
+    for (let j = 0; j < at.length; j++) column[j]! -= amount * slope[at[j]!]!;
   }
   return column;
 }

@@ -109,14 +109,20 @@ function startOf(packed: PackedColumns, work: Workspace) {
   };
 }
 
-/** 1/σ² at each fitted absorbance (`absorbanceVariance`). */
-function weigh(fitted: Float64Array, noise: NoiseModel, weights: Float64Array): void {
+/** 1/σ² at each fitted absorbance (`absorbanceVariance`), with what else adds to the variance. */
+export function weigh(
+  fitted: Float64Array,
+  noise: NoiseModel,
+  weights: Float64Array,
+  extra: Float64Array | null = null,
+): void {
   const flat = noise.constant * noise.constant;
   const rise = noise.transmittance * noise.transmittance;
   const floor = noiseFloor * noiseFloor;
   for (let i = 0; i < fitted.length; i++) {
     const variance = flat + rise * Math.exp(2 * Math.LN10 * Math.min(fitted[i]!, 6));
-    weights[i] = 1 / Math.max(variance, floor);
+    const more = extra === null ? 0 : extra[i]!;
+    weights[i] = 1 / (Math.max(variance, floor) + more);
   }
 }
 
