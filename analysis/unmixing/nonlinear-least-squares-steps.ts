@@ -39,12 +39,10 @@ const mostPolishing = 80;
 const outOfValley = 0.01;
 /** Beyond this the damped step is nothing beside any parameter. */
 const mostDamping = 1e20;
-/** Orthogonality that rounding of the residual leaves at best. */
-const orthogonalToRounding = 1e-14;
 /** Where rounding rules, the next steps wander about the minimum: the best of some is taken. */
 const mostWandering = 4;
-/** A step that takes less than this share of the sum of squares is left to the polish. */
-const littleGain = 1e-15;
+/** Rounding of the sum of squares, relative. */
+const rounding = 1e-15;
 
 /** The point at these parameters, or null where they are not allowed. */
 export function pointAt(
@@ -64,13 +62,13 @@ export function pointAt(
  * with √damping · scale below it by orthogonal factors (Moré, Lecture Notes in Mathematics 630
  * (1978) 105), the damping follows how well the step kept its promise (Nielsen, IMM-REP-1999-05).
  *
- * @param cosine the end: largest cosine between the residual and a column of the Jacobian
+ * @param cosine the end: largest cosine between the residual and a column of the Jacobian, or a step
+ *   that gained less than its square
  */
 export function descended(
   problem: NonlinearProblem,
   start: SearchPoint,
-  rule: DampingScale,
-  firstDamping: number,
+  [rule, firstDamping]: readonly [DampingScale, number],
   cosine: number,
 ): SearchPoint {
   let point = start;
@@ -91,7 +89,7 @@ export function descended(
     const kept = promised > 0 ? Math.min(gained / promised, 1) : 1;
     damping *= Math.max(1 / 3, 1 - (2 * kept - 1) ** 3);
     growth = 2;
-    const settled = gained < littleGain * point.sumOfSquares;
+    const settled = gained < Math.max(cosine ** 2, rounding) * point.sumOfSquares;
     point = next;
     if (settled) break;
     scale = dampingScale(rule, point, scale);
@@ -102,14 +100,20 @@ export function descended(
 /**
  * Gauss and Newton's steps while they bring residual and Jacobian nearer to orthogonal. The sum of
  * squares itself no longer shows the way there: it is flat over half the digits of the parameters.
+ *
+ * @param enough orthogonality that ends it
  */
-export function polished(problem: NonlinearProblem, start: SearchPoint): PolishedPoint {
+export function polished(
+  problem: NonlinearProblem,
+  start: SearchPoint,
+  enough: number,
+): PolishedPoint {
   const first = measured(start);
   let best = first.point;
   let { point, move } = first;
   let wandering = 0;
   for (let round = 0; round < mostPolishing && wandering < mostWandering; round++) {
-    if (best.orthogonality < orthogonalToRounding || point.rank < point.jacobian.length) break;
+    if (best.orthogonality < enough || point.rank < point.jacobian.length) break;
     const next = pointAt(problem, added(point.parameters, move));
     // steps that leave the valley would find another minimum, or a saddle
     if (next === null || next.sumOfSquares > best.sumOfSquares * (1 + outOfValley)) break;

@@ -15,6 +15,11 @@ export type { NonlinearProblem } from './nonlinear-least-squares-steps.ts';
 export interface NonlinearSettings {
   /** Searches tried at most where the first does not converge; 1 for no restarts. */
   readonly searches?: number;
+  /**
+   * |Qᵀr|/|r| that ends the polish; by default what rounding leaves. The distance from the minimum in
+   * standard deviations is of that order (times the root of the degrees of freedom).
+   */
+  readonly enough?: number;
 }
 
 export interface NonlinearFit {
@@ -38,8 +43,13 @@ export interface NonlinearFit {
 const orthogonal = 1e-7;
 /** Of each parameter, where the residual is mostly rounding and cannot be orthogonal to anything. */
 const settledStep = 1e-10;
-/** The one from the library's answer, and each restart once. */
-const mostSearches = 10;
+const usual: Required<NonlinearSettings> = {
+  // the one from the library's answer, and each restart once
+  searches: 10,
+  enough: 1e-14,
+};
+/** Cosine of residual and Jacobian from which on the polish is quick; a step gains its square. */
+const nearlyOrthogonal = 1e-4;
 const librarySteps = 6;
 const libraryDamping = 0.01;
 
@@ -63,33 +73,40 @@ export function nonlinearLeastSquares(
 ): NonlinearFit {
   const first = pointAt(problem, start);
   if (first === null) throw new RangeError('the search starts where the model has no value');
-  let best = searched(problem, byLibrary(problem, first), 'largest-slope', 1e-3);
-  for (const [rule, damping] of restarts.slice(0, (settings.searches ?? mostSearches) - 1)) {
-    if (converged(best)) break;
-    const found = searched(problem, first, rule, damping);
-    if (converged(found) || found.sumOfSquares < best.sumOfSquares) best = found;
+  const { searches, enough } = { ...usual, ...settings };
+  const near = byLibrary(problem, first);
+  let best = searched(problem, near, ['largest-slope', 1e-3], enough);
+  for (const damping of restarts.slice(0, searches - 1)) {
+    if (converged(best, enough)) break;
+    const found = searched(problem, first, damping, enough);
+    if (converged(found, enough) || found.sumOfSquares < best.sumOfSquares) best = found;
   }
-  return fitOf(best);
+  return fitOf(best, enough);
 }
 
 /** Down until the polish should do better, and on down if it does not. */
 function searched(
   problem: NonlinearProblem,
   start: SearchPoint,
-  rule: DampingScale,
-  damping: number,
+  damping: readonly [DampingScale, number],
+  enough: number,
 ): PolishedPoint {
-  const near = descended(problem, start, rule, damping, 1e-4);
-  const found = polished(problem, near);
-  if (converged(found)) return found;
-  return polished(problem, descended(problem, near, rule, damping, 1e-12));
+  const near = descended(problem, start, damping, nearlyOrthogonal);
+  const found = polished(problem, near, enough);
+  if (converged(found, enough)) return found;
+  const tight = Math.max(1e-12, enough * nearlyOrthogonal);
+  return polished(problem, descended(problem, near, damping, tight), enough);
 }
 
-function converged({ orthogonality, lastStep, rank, jacobian }: PolishedPoint): boolean {
-  return rank === jacobian.length && (orthogonality < orthogonal || lastStep < settledStep);
+function converged(
+  { orthogonality, lastStep, rank, jacobian }: PolishedPoint,
+  enough: number,
+): boolean {
+  if (rank < jacobian.length) return false;
+  return orthogonality < Math.max(orthogonal, enough) || lastStep < settledStep;
 }
 
-function fitOf(point: PolishedPoint): NonlinearFit {
+function fitOf(point: PolishedPoint, enough: number): NonlinearFit {
   const { parameters, residual, jacobian, sumOfSquares, orthogonality, unitDeviations } = point;
   const df = residual.length - parameters.length;
   const scatter = df > 0 ? Math.sqrt(sumOfSquares / df) : Number.NaN;
@@ -100,26 +117,31 @@ function fitOf(point: PolishedPoint): NonlinearFit {
     sumOfSquares,
     orthogonality,
     standardDeviations: unitDeviations.map((value) => value * scatter),
-    converged: converged(point),
+    converged: converged(point, enough),
   };
 }
 
 /**
  * The library's search in parameters that are 0 at the start and whose columns of the Jacobian have
  * norm 1 there, since its damping knows no units. It keeps bad steps and has no test for being
- * there, so it gets few steps, and the best point it came by is taken.
+ * there but NaN, so it gets few steps, and the best point it came by is taken.
  */
 function byLibrary(problem: NonlinearProblem, start: SearchPoint): SearchPoint {
   const unit = Float64Array.from(start.jacobian, (column) => 1 / (Math.sqrt(squares(column)) || 1));
   const points = start.residual.length;
   let best = start;
+  let there = false;
   let last: SearchPoint | null = start;
   const at = (scaled: readonly number[]): SearchPoint | null => {
     const parameters = start.parameters.map((value, k) => value + scaled[k]! * unit[k]!);
     // it asks for every point twice
     if (last?.parameters.every((value, k) => value === parameters[k])) return last;
+    if (there) return null;
     last = pointAt(problem, parameters);
-    if (last !== null && last.sumOfSquares < best.sumOfSquares) best = last;
+    if (last !== null && last.sumOfSquares < best.sumOfSquares) {
+      there = last.sumOfSquares > best.sumOfSquares * (1 - nearlyOrthogonal ** 2);
+      best = last;
+    }
     return last;
   };
   try {
