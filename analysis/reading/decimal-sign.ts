@@ -48,16 +48,28 @@ export function settleDecimalSign(rows: readonly DataRow[]): SettledDecimal {
 
 function look(rows: readonly DataRow[]): Seen {
   const seen: Seen = { first: new Map(), counts: new Map() };
+  // nearly all numbers of a file are of one sort: runs of it are counted beside the map
+  let last: Sort | null = null;
+  let run = 0;
+  const count = () => {
+    if (last !== null) seen.counts.set(last, (seen.counts.get(last) ?? 0) + run);
+  };
   for (const { cells, line } of rows) {
     for (const cell of cells) {
       const kind = numberKind(cell);
       if (kind === 'none' || kind === 'integer') continue;
       const isOpen = (kind === 'point' || kind === 'comma') && looksGrouped(cell);
       const sort: Sort = isOpen ? `${kind}-or-thousands` : kind;
-      if (!seen.first.has(sort)) seen.first.set(sort, { cell, line });
-      seen.counts.set(sort, (seen.counts.get(sort) ?? 0) + 1);
+      if (sort !== last) {
+        count();
+        last = sort;
+        run = 0;
+        if (!seen.first.has(sort)) seen.first.set(sort, { cell, line });
+      }
+      run += 1;
     }
   }
+  count();
   return seen;
 }
 

@@ -62,6 +62,8 @@ function exponentFollows(cell: string, at: number): boolean {
 
 /** "1,234" or "12.345": a decimal number, or a whole one with its thousands marked off. */
 export function looksGrouped(cell: string): boolean {
+  const sign = cell.charCodeAt(cell.length - 4);
+  if (sign !== 44 && sign !== 46) return false;
   return /^[+\-\u2212\u2013]?[1-9]\d{0,2}[.,]\d{3}$/.test(cell);
 }
 
@@ -71,6 +73,8 @@ export function looksGrouped(cell: string): boolean {
  * file (`settleDecimalSign`).
  */
 export function cellValue(cell: string, decimal: DecimalSign): number {
+  const plain = plainValue(cell, decimal === 'point' ? 46 : 44);
+  if (!Number.isNaN(plain)) return plain;
   const kind = numberKind(cell);
   if (kind === 'none') return Number.NaN;
   let literal = cell;
@@ -82,6 +86,33 @@ export function cellValue(cell: string, decimal: DecimalSign): number {
   const value = Number.isNaN(direct) ? Number(asLiteral(literal)) : direct;
   // Zero has no sign here; a number beyond double precision is none.
   return Number.isFinite(value) ? value + 0 : Number.NaN;
+}
+
+/** So many digits are a whole number that a double holds exactly. */
+const mostPlainDigits = 15;
+const powersOfTen = Float64Array.from({ length: mostPlainDigits + 1 }, (_, k) => Number(`1e${k}`));
+
+/**
+ * Value of a cell of few digits with at most one decimal sign between them; NaN for all others. Both
+ * the digits as a whole number and the power of ten are exact, so that their quotient is rounded once
+ * and is the double nearest to what is printed, as `Number` gives it (Clinger, PLDI 1990).
+ */
+function plainValue(cell: string, sign: number): number {
+  const { length } = cell;
+  if (length > mostPlainDigits) return Number.NaN;
+  const isNegative = cell.charCodeAt(0) === 45;
+  let whole = 0;
+  let signAt = -1;
+  for (let at = isNegative ? 1 : 0; at < length; at += 1) {
+    const code = cell.charCodeAt(at);
+    if (isDigit(code)) whole = 10 * whole + (code - 48);
+    else if (code === sign && signAt === -1) signAt = at;
+    else return Number.NaN;
+  }
+  const first = isNegative ? 1 : 0;
+  if (length === first || signAt === first || signAt === length - 1) return Number.NaN;
+  const value = signAt === -1 ? whole : whole / powersOfTen[length - signAt - 1]!;
+  return isNegative && value !== 0 ? -value : value;
 }
 
 function asLiteral(text: string): string {

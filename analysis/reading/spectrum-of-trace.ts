@@ -9,20 +9,12 @@ import { HIGHEST_NM, isPlausibleNm, LOWEST_NM, toNm } from './wavelength.ts';
  * absorbance. Throws `Refusal` where order, range, number of points or quantity do not allow it.
  */
 export function spectrumOfTrace(trace: RawTrace, unnamedIs?: Quantity): ReadSpectrum {
-  const { x, lines } = trace;
-  if (x.length < 2) throw tooFewPoints(trace);
-  const isAscending = checkOrder(x, lines, trace.unit);
-  const nm = x.map((value) => toNm(value, trace.unit));
-  checkRange(nm, trace);
+  if (trace.x.length < 2) throw tooFewPoints(trace);
+  const { nm, isReversed } = axisOf(trace);
   if (trace.y.every(Number.isNaN)) throw noValues(trace);
   const { quantity, assumptions } = settleQuantity(trace, unnamedIs);
   const converted = convert(trace.y, quantity);
-  // Wavenumbers and energies run against wavelengths.
-  const runsAgainst = trace.unit === 'cm-1' || trace.unit === 'eV';
-  if (isAscending === runsAgainst) {
-    nm.reverse();
-    converted.values.reverse();
-  }
+  if (isReversed) converted.values.reverse();
   const values =
     quantity === 'molar-absorptivity'
       ? { molarAbsorptivity: converted.values }
@@ -42,6 +34,31 @@ export function spectrumOfTrace(trace: RawTrace, unnamedIs?: Quantity): ReadSpec
       ...unitNote(trace),
     ],
   };
+}
+
+interface AxisInNm {
+  readonly unit: RawTrace['unit'];
+  /** Ascending. */
+  readonly nm: Float64Array;
+  readonly isReversed: boolean;
+}
+
+/** Traces that stand on one axis share its wavelengths. */
+const axes = new WeakMap<Float64Array, AxisInNm>();
+
+function axisOf(trace: RawTrace): AxisInNm {
+  const { x, lines, unit } = trace;
+  const before = axes.get(x);
+  if (before?.unit === unit) return before;
+  const isAscending = checkOrder(x, lines, unit);
+  const nm = x.map((value) => toNm(value, unit));
+  checkRange(nm, trace);
+  // Wavenumbers and energies run against wavelengths.
+  const isReversed = isAscending === (unit === 'cm-1' || unit === 'eV');
+  if (isReversed) nm.reverse();
+  const axis = { unit, nm, isReversed };
+  axes.set(x, axis);
+  return axis;
 }
 
 function unitNote({ unit }: RawTrace): string[] {
@@ -135,9 +152,13 @@ function fromTransmittance(y: Float64Array, whole: 1 | 100) {
 }
 
 function withoutMarks(y: Float64Array) {
-  const isMark = (value: number) => Math.abs(value) > HIGHEST_ABSORBANCE;
-  const marks = y.filter(isMark);
-  const values = y.map((value) => (isMark(value) ? Number.NaN : value));
+  const values = y.slice();
+  const marks: number[] = [];
+  for (let i = 0; i < values.length; i += 1) {
+    if (!(Math.abs(values[i] ?? 0) > HIGHEST_ABSORBANCE)) continue;
+    marks.push(values[i] ?? 0);
+    values[i] = Number.NaN;
+  }
   const points = marks.length === 1 ? '1 point has' : `${marks.length} points have`;
   const assumptions =
     marks.length > 0
