@@ -20,6 +20,7 @@ export { reportCsv } from './report/report-csv.ts';
 export { reportHtml } from './report/report-html.ts';
 export { resultsJson } from './report/results-json.ts';
 export { answerText } from './report/sections/answer.ts';
+export { separationText } from './report/separation-text.ts';
 export { speciesGlyph } from './report/species-glyph.ts';
 export { speciesLook } from './report/species-look.ts';
 export {

@@ -101,6 +101,14 @@ function aliquotRows(result: AliquotResult): Row[] {
       unit: '1',
       text: strayLightOrigins[fit.strayLight.from],
     },
+    ...fit.separation.map(
+      ({ species, inflation }): Row => ({
+        quantity: 'uncertainty inflated by likeness of the standards',
+        species,
+        value: inflation,
+        unit: '1',
+      }),
+    ),
     ...fit.baseline.map(
       ({ term, absorbance }): Row => ({
         quantity: `baseline ${term}`,

@@ -6,6 +6,7 @@ import {
   ownCovariance,
   standardsNoiseOn,
 } from '../unmixing/error-sources.ts';
+import { separationOf } from '../unmixing/separation.ts';
 import type { Unmixing } from '../unmixing/unmix.ts';
 import type { AmountEstimate } from './amounts.ts';
 import { plainQuantile, studentFactor } from './confidence-set.ts';
@@ -63,6 +64,10 @@ export function fitResult(unmixing: Unmixing, wavelengthNm: Float64Array): FitRe
       ...symmetric(strayLight.value, ofInstrument.strayLight, df),
       from: strayLight.sd > 0 ? 'fit' : strayLight.value > 0 ? 'sheet' : 'none',
     },
+    separation: separationOf(fit, unmixing.species.length).map((inflation, k) => ({
+      species: unmixing.species[k]!,
+      inflation: Number.isFinite(inflation) ? inflation : null,
+    })),
     noise: { ...noise, from: noiseFrom },
   };
 }

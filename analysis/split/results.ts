@@ -55,6 +55,8 @@ export interface FitResult {
   readonly baseline: readonly BaselineTerm[];
   /** Fraction of the light in the reference beam that was taken out, and where it is from. */
   readonly strayLight: Quantified & { readonly from: 'none' | 'sheet' | 'fit' };
+  /** How far the likeness of the standards in the window inflates the uncertainty of each amount; 1 is well separated, null without bound. */
+  readonly separation: readonly { readonly species: string; readonly inflation: number | null }[];
   /** Noise model used: absorbance units, and transmittance units. */
   readonly noise: {
     readonly constant: number;

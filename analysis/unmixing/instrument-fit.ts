@@ -1,5 +1,5 @@
-import { levenbergMarquardt } from 'ml-levenberg-marquardt';
 import { orthonormal, projectedOut } from '../spectrum/vectors.ts';
+import { nonlinearLeastSquares } from './nonlinear-least-squares.ts';
 import { factorise } from './orthogonal.ts';
 import { modelled, type Prior, type WeightedFit } from './weighted-fit.ts';
 
@@ -33,19 +33,24 @@ export interface InstrumentModel {
 
 const mostSteps = 50;
 const smallestSingular = 1e-7;
+const mostSearches = 3;
 
 /**
  * Errors of the instrument by variable projection: a Levenberg-Marquardt search on the whitened data
- * brings them near (general library; whitened because its own weights are wrong), Gauss-Newton steps
- * with the slopes as further columns polish them. The fit returned holds the slopes as its last
+ * brings them near, Gauss-Newton steps with the slopes as further columns polish them. The fit returned holds the slopes as its last
  * columns, so that its covariance carries what the free errors cost; priors are joined as
  * observations.
+ *
+ * @param near sizes to polish, from a fit with nearly these weights; searched for unless given
  */
-export function fitInstrument(model: InstrumentModel): {
+export function fitInstrument(
+  model: InstrumentModel,
+  near?: Float64Array,
+): {
   readonly sizes: Float64Array;
   readonly fit: WeightedFit;
 } {
-  let sizes = searched(model);
+  let sizes = near ?? searched(model);
   for (let round = 0; ; round++) {
     const linear = model.modelAt(sizes);
     const plain = model.fit(linear, []);
@@ -65,51 +70,48 @@ export function fitInstrument(model: InstrumentModel): {
   }
 }
 
-/** Weights as they are without errors; the polish takes them anew. */
+/** By `nonlinearLeastSquares`, weights as they are without errors; the polish takes them anew. */
 function searched(model: InstrumentModel): Float64Array {
   const { errors } = model;
   const nothing = new Float64Array(errors.length);
-  const start = model.modelAt(nothing);
-  const sd = model.fit(start, []).variance.map(Math.sqrt);
-  const points = start.measured.length;
+  const sd = model.fit(model.modelAt(nothing), []).variance.map(Math.sqrt);
   const whitened = (column: Float64Array): Float64Array => column.map((value, i) => value / sd[i]!);
-  const sizesAt = (scaled: readonly number[]): Float64Array =>
-    Float64Array.from(scaled, (value, j) => within(errors[j]!, value * errors[j]!.step));
-  const projected = (scaled: readonly number[]) => {
-    const sizes = sizesAt(scaled);
+  const projected = (sizes: Float64Array) => {
     const linear = model.modelAt(sizes);
-    const factors = factorise(linear.columns.map(whitened), undefined, smallestSingular);
-    const parameters = factors.solvePlain(whitened(linear.measured));
-    const fitted = modelled(linear.columns, parameters);
-    const residual = whitened(linear.measured.map((value, i) => value - fitted[i]!));
-    const slopes = (): Float64Array[] => {
-      const basis = orthonormal(linear.columns.map(whitened));
-      return model
-        .slopesAt(sizes, parameters)
-        .map((slope, j) =>
-          projectedOut(basis, whitened(slope)).map((value) => -value * errors[j]!.step),
-        );
-    };
-    return { residual, slopes };
+    const columns = linear.columns.map(whitened);
+    const parameters = factorise(columns, undefined, smallestSingular).solvePlain(
+      whitened(linear.measured),
+    );
+    return { linear, columns, parameters };
   };
-  const answer = levenbergMarquardt(
-    { x: Float64Array.from({ length: points }, (_, i) => i), y: new Float64Array(points) },
-    (scaled: number[]) => {
-      const { residual } = projected(scaled);
-      return (i: number) => residual[i]!;
-    },
+  const withKnown = (points: Float64Array, known: readonly number[]): Float64Array =>
+    Float64Array.from([...points, ...known]);
+  return nonlinearLeastSquares(
+    nothing,
     {
-      initialValues: Array.from(nothing),
-      jacobianFunction: (scaled) => {
-        const slopes = projected(scaled).slopes();
-        return (i) => slopes.map((slope) => slope[i]!);
+      residual: (sizes) => {
+        const known = errors.flatMap(({ priorSd }, j) => (priorSd ? [sizes[j]! / priorSd] : []));
+        if (errors.some((error, j) => within(error, sizes[j]!) !== sizes[j])) {
+          return withKnown(new Float64Array(sd.length).fill(Number.NaN), known);
+        }
+        const { linear, parameters } = projected(sizes);
+        const fitted = modelled(linear.columns, parameters);
+        return withKnown(whitened(linear.measured.map((value, i) => value - fitted[i]!)), known);
       },
-      damping: 0.01,
-      maxIterations: 6,
-      errorTolerance: 1e-300,
+      jacobian: (sizes) => {
+        const { columns, parameters } = projected(sizes);
+        const basis = orthonormal(columns);
+        return model.slopesAt(sizes, parameters).map((slope, j) => {
+          const known = errors.flatMap(({ priorSd }, m) =>
+            priorSd ? [m === j ? 1 / priorSd : 0] : [],
+          );
+          const rest = projectedOut(basis, whitened(slope)).map((value) => -value);
+          return withKnown(rest, known);
+        });
+      },
     },
-  );
-  return sizesAt(answer.parameterValues);
+    { searches: mostSearches },
+  ).parameters;
 }
 
 function within({ range: [low, high] }: InstrumentError, size: number): number {

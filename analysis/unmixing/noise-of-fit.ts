@@ -69,9 +69,8 @@ export function noiseOfFit(
   const scan = scanOf(points);
   const plain = sampleOf(at, scan.residual, scan.basis);
   const correlation = noiseCorrelation([plain, ...near]);
-  const model = orthonormal(fit.whitened);
   const sd = scan.sd;
-  const whole = levelOf(sampleOf(at, divided(fit.residual, sd), model), correlation.rho);
+  const whole = levelOf(sampleOf(at, divided(fit.residual, sd), scan.model), correlation.rho);
   const raw = levelToUse(whole.variance, whole.df, from);
   const known = { level: raw.level, df: joinedDf(raw.measured ? whole.df : Infinity, correlation) };
   const withoutBand = strongestBand(scan, correlation);
@@ -189,11 +188,16 @@ function judged(
   };
 }
 
-function scanOf({ nm, fit, beside }: Omit<FittedPoints, 'at'>): Scan {
+/** `model` is the basis of the fit alone, which `basis` begins with. */
+function scanOf({ nm, fit, beside }: Omit<FittedPoints, 'at'>) {
   const sd = rooted(fit.variance);
-  const basis = orthonormal([...fit.whitened, ...beside.map((column) => divided(column, sd))]);
+  const model = orthonormal(fit.whitened);
+  const basis = orthonormal(
+    beside.map((column) => divided(column, sd)),
+    model,
+  );
   const residual = projectedOut(basis, divided(fit.residual, sd));
-  return { nm, sd, residual, basis };
+  return { nm, sd, residual, basis, model };
 }
 
 /** Laid out on the crude's own grid, so that points left out keep their neighbours apart. */

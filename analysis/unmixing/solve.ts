@@ -41,8 +41,17 @@ interface State extends LinearModel {
   readonly design: Design;
 }
 
-/** Amounts, baseline and the instrument's errors with weights from this noise, on these points of the crude. */
-export function solveWith(input: Measurement, at: Int32Array, noise: NoiseModel): Solution {
+/**
+ * Amounts, baseline and the instrument's errors with weights from this noise, on these points of the crude.
+ *
+ * @param near a solution with nearly these weights, from which the instrument's errors are only polished
+ */
+export function solveWith(
+  input: Measurement,
+  at: Int32Array,
+  noise: NoiseModel,
+  near?: Solution,
+): Solution {
   const { crude, settings, pathLengthCm } = input;
   const states = new Map<string, State>();
   const stateAt = (shiftNm: number, strayLight: number): State => {
@@ -80,22 +89,32 @@ export function solveWith(input: Measurement, at: Int32Array, noise: NoiseModel)
     const { shiftNm, strayLight } = sizesOf(sizes);
     return stateAt(shiftNm, strayLight);
   };
-  const found = fitInstrument({
-    errors: instrumentErrors(settings, start.measured),
-    modelAt: stateOf,
-    slopesAt: (sizes, parameters) => {
-      const { shiftNm, strayLight } = sizesOf(sizes);
-      const here = stateAt(shiftNm, strayLight);
-      const shift =
-        settings.shift === 'common' ? [shiftSlope(here.moved, at, pathLengthCm, parameters)] : [];
-      if (settings.strayLight !== 'fit') return shift;
-      const more = stateAt(shiftNm, strayLight + strayLightStep);
-      return [...shift, strayLightSlope(here, more, parameters)];
+  const found = fitInstrument(
+    {
+      errors: instrumentErrors(settings, start.measured),
+      modelAt: stateOf,
+      slopesAt: (sizes, parameters) => {
+        const { shiftNm, strayLight } = sizesOf(sizes);
+        const here = stateAt(shiftNm, strayLight);
+        const shift =
+          settings.shift === 'common' ? [shiftSlope(here.moved, at, pathLengthCm, parameters)] : [];
+        if (settings.strayLight !== 'fit') return shift;
+        const more = stateAt(shiftNm, strayLight + strayLightStep);
+        return [...shift, strayLightSlope(here, more, parameters)];
+      },
+      fit: ({ columns, measured }, priors) =>
+        weightedFit(columns, measured, noise, weighing(start.moved), priors),
     },
-    fit: ({ columns, measured }, priors) =>
-      weightedFit(columns, measured, noise, weighing(start.moved), priors),
-  });
+    near && sizesToFit(settings, near.sizes),
+  );
   return asSolution(sizesOf(found.sizes), stateOf(found.sizes), found.fit);
+}
+
+function sizesToFit(settings: FitSettings, { shiftNm, strayLight }: Solution['sizes']) {
+  return Float64Array.from([
+    ...(settings.shift === 'common' ? [shiftNm] : []),
+    ...(settings.strayLight === 'fit' ? [strayLight] : []),
+  ]);
 }
 
 export function statedStrayLight({ strayLight }: FitSettings): number {
@@ -106,7 +125,7 @@ function instrumentErrors(settings: FitSettings, measured: Float64Array): Instru
   const shift: InstrumentError = {
     range: [-largestShiftNm, largestShiftNm],
     step: 0.5,
-    settled: 1e-7,
+    settled: 1e-5,
     priorSd: settings.shiftPriorNm,
   };
   // a reading needs less stray light than reaches the detector with it
@@ -115,7 +134,7 @@ function instrumentErrors(settings: FitSettings, measured: Float64Array): Instru
   const stray: InstrumentError = {
     range: [-0.1 * ceiling, ceiling],
     step: 0.2 * ceiling,
-    settled: 1e-9,
+    settled: 1e-8,
     priorSd: null,
   };
   return [

@@ -100,7 +100,7 @@ export function unmix(input: UnmixInput): Unmixing {
   refuseTooFew(input, standards.length, use, at);
   const first = solveWith(input, at, firstNoise(input));
   const { noise, known, alike } = noiseModelOf(input, input.noiseSamples, at, first);
-  const solved = settings.noise ? first : solveWith(input, at, noise);
+  const solved = settings.noise ? first : solveWith(input, at, noise, first);
   const { fit, sizes, molarAbsorptivity, design } = solved;
   const nm = Float64Array.from(at, (i) => crude.wavelengthNm[i]!);
   const shiftColumn =

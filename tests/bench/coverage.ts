@@ -5,6 +5,7 @@ const fractions = [0, 0.005, 0.05, 0.5, 0.95, 0.995];
 const absorbances = [0.1, 0.5, 1.5];
 const steps = [2, 1, 0.2];
 const smoothings = [1, 5];
+const seedsOfCell = 1_000_000;
 
 /** Coverage of nominal 95 % intervals of the mono fraction over the grid of conditions, noise estimated from the data. */
 export function coverage(draws: number): void {
@@ -15,11 +16,17 @@ export function coverage(draws: number): void {
     `step nm  points smoothed  absorbance  ${fractions.map((f) => `f=${f}`.padStart(8)).join('')}`,
   );
   const cells: Coverage[] = [];
+  let cellsBefore = 0;
   for (const stepNm of steps) {
     for (const smoothing of smoothings) {
       for (const absorbance of absorbances) {
         const row = fractions.map((fraction) =>
-          coverageOf(draws, { fraction, absorbance, stepNm, smoothing }),
+          coverageOf(
+            draws,
+            { fraction, absorbance, stepNm, smoothing },
+            // every cell has draws of its own
+            1 + cellsBefore++ * seedsOfCell,
+          ),
         );
         cells.push(...row);
         const shown = row.map(({ inside }) => percent(inside / draws).padStart(8)).join('');

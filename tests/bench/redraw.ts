@@ -9,9 +9,13 @@ export interface Redraw {
 }
 
 /** Draws standards, offset and noise anew `draws` times, and measures each through the whole pipeline. */
-export function* redrawn(draws: number, changes: Partial<Conditions>): Generator<Redraw> {
-  for (let seed = 1; seed <= draws; seed++) {
-    const { sheet, truth } = simulated({ ...changes, seed });
+export function* redrawn(
+  draws: number,
+  changes: Partial<Conditions>,
+  firstSeed = 1,
+): Generator<Redraw> {
+  for (let draw = 0; draw < draws; draw++) {
+    const { sheet, truth } = simulated({ ...changes, seed: firstSeed + draw });
     const aliquot = sheet.aliquots?.[0];
     if (!aliquot) throw new Error('no aliquot');
     yield { result: quantifyAliquot(prepare(sheet, noFiles), aliquot, noFiles).result, truth };
@@ -24,10 +28,14 @@ export interface Coverage {
 }
 
 /** How often the interval of the mono fraction held the truth. */
-export function coverageOf(draws: number, changes: Partial<Conditions>): Coverage {
+export function coverageOf(
+  draws: number,
+  changes: Partial<Conditions>,
+  firstSeed = 1,
+): Coverage {
   const { fraction = 0.5 } = changes;
   let inside = 0;
-  for (const { result } of redrawn(draws, changes)) {
+  for (const { result } of redrawn(draws, changes, firstSeed)) {
     const [low, high] = result.split[0]?.fraction.interval95 ?? [null, null];
     // the ends of intervals at a bound are found by bisection
     if ((low ?? 0) <= fraction + 1e-9 && fraction - 1e-9 <= (high ?? 1)) inside++;

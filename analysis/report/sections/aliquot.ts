@@ -12,6 +12,7 @@ import {
   type ReadingUnit,
   readingUnits,
 } from '../numbers.ts';
+import { separationText } from '../separation-text.ts';
 import { speciesCell } from '../species-cell.ts';
 import { answerText } from './answer.ts';
 
@@ -37,7 +38,7 @@ export function aliquotHtml(
       : '',
     curves ? fitFigureSvg(sheet, curves, result.doubts) : '',
     '</div>',
-    `<p class="soft small">${escaped(fitText(result))}</p>`,
+    `<p class="soft small">${escaped(fitText(sheet, result))}</p>`,
     splitBarSvg(sheet, result.split),
     ledger(sheet, result, units),
     doubtsHtml(sheet, result),
@@ -83,7 +84,7 @@ function cells(quantity: Quantified, unit: ReadingUnit, isShown: boolean): [stri
 
 const noiseOrigins = { sheet: 'as given', scans: 'from the scans', spectrum: 'estimated' };
 
-function fitText({ fit }: AliquotResult): string {
+function fitText(sheet: Sheet, { fit }: AliquotResult): string {
   const { noise, baseline, shiftNm, strayLight } = fit;
   const withUncertainty = (quantity: Quantified, unit: ReadingUnit, unitName: string): string => {
     const { value, uncertainty } = quantifiedText(quantity, { unit });
@@ -107,6 +108,7 @@ function fitText({ fit }: AliquotResult): string {
     strayLight.from === 'sheet' && strayLight.value !== null
       ? `stray light as stated: ${givenText(100 * strayLight.value)} %`
       : '',
+    `uncertainty inflated by likeness of the standards in the window: ${separationText(sheet, fit)}`,
   ];
   return `${parts.filter((part) => part !== '').join('; ')}.`;
 }

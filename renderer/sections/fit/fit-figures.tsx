@@ -5,11 +5,18 @@ import {
   numberText,
   type Quantified,
   quantifiedText,
+  type Sheet,
+  separationText,
 } from '../../../analysis/index.ts';
 import { noiseOrigin, noiseText } from './noise-text.ts';
 
+interface Props {
+  readonly sheet: Sheet;
+  readonly fit: AliquotResult['fit'];
+}
+
 /** How well the fit lies on the points, in figures. */
-export function FitFigures({ fit }: { readonly fit: AliquotResult['fit'] }) {
+export function FitFigures({ sheet, fit }: Props) {
   const { noise, shiftNm, baseline, strayLight } = fit;
   return (
     <dl class="figures">
@@ -43,6 +50,8 @@ export function FitFigures({ fit }: { readonly fit: AliquotResult['fit'] }) {
           <dd>{withUncertainty(absorbance, 'milliabsorbance', 'mAU')}</dd>
         </Fragment>
       ))}
+      <dt>made less certain by likeness of the standards</dt>
+      <dd>{separationText(sheet, fit)}</dd>
     </dl>
   );
 }

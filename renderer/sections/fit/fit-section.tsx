@@ -43,7 +43,7 @@ export function FitSection(props: SectionProps) {
       )}
       <div class="fit-lower">
         <FitFields sheet={sheet} change={change} low={low} high={high} />
-        {result && <FitFigures fit={result.fit} />}
+        {result && <FitFigures sheet={sheet} fit={result.fit} />}
       </div>
     </>
   );

@@ -85,6 +85,11 @@ const fit: AliquotResult['fit'] = {
     { term: 'slope', absorbance: quantified(-3e-5, 9e-5, -2.1e-4, 1.5e-4) },
   ],
   strayLight: { ...quantified(0, 0, 0, 0), from: 'none' },
+  separation: [
+    { species: 'chloride', inflation: 1.2 },
+    { species: 'mono', inflation: 2.9 },
+    { species: 'bis', inflation: 2.7 },
+  ],
   noise: { constant: 3.1e-4, transmittance: 2.2e-4, from: 'spectrum' },
 };
 
