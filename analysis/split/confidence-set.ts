@@ -1,6 +1,7 @@
 import { normalQuantile } from '../distributions/normal.ts';
 import { studentTQuantile } from '../distributions/student-t.ts';
 import { acceptance } from './bounded-mean.ts';
+import { fiellerSet, type UncertainRatio } from './fieller.ts';
 
 export const confidence = 0.95;
 /** 97.5 % quantile of the normal. */
@@ -18,6 +19,8 @@ export interface BoundedParameter {
   readonly upper: number;
   /** Degrees of freedom behind the standard deviation; Infinity where it is known. */
   readonly df: number;
+  /** Where the parameter is a ratio of two estimates: Fieller's closed form then serves away from the bounds. */
+  readonly ratio?: UncertainRatio;
 }
 
 /**
@@ -30,7 +33,44 @@ export function confidenceInterval(parameter: BoundedParameter): readonly [numbe
   const start = Math.min(Math.max(estimate, 0), upper);
   const step = sd(start);
   if (!(step > 0)) return [start, start];
+  const closed = closedInterval(parameter);
+  if (closed) return closed;
   return [end(parameter, start, -step), end(parameter, start, step)];
+}
+
+/** Fieller's interval, if both its ends stand so far from the bounds that no bound shows in their tests. */
+function closedInterval(parameter: BoundedParameter): readonly [number, number] | null {
+  if (!parameter.ratio) return null;
+  const set = fiellerSet(parameter.ratio, plainQuantile * widening(parameter));
+  if (set.shape !== 'bounded') return null;
+  const { lower, upper } = set;
+  const clear = [lower, upper].every((value) => isClear(inStandardDeviations(parameter, value)));
+  return clear ? [lower, upper] : null;
+}
+
+/** From the lower bound and from the upper one, in standard deviations. */
+interface DistancesFromBounds {
+  readonly mean: number;
+  readonly room: number;
+}
+
+function inStandardDeviations(parameter: BoundedParameter, value: number): DistancesFromBounds {
+  const { sd, upper } = parameter;
+  const unit = sd(value) * widening(parameter);
+  return {
+    mean: value / unit,
+    room: upper === Number.POSITIVE_INFINITY ? upper : (upper - value) / unit,
+  };
+}
+
+/** A bound outside the two-sided region does not show in it. */
+function isClear({ mean, room }: DistancesFromBounds): boolean {
+  return mean >= plainQuantile && room >= plainQuantile;
+}
+
+/** What a standard deviation counts more for having been estimated. */
+function widening({ df }: BoundedParameter): number {
+  return df === Number.POSITIVE_INFINITY ? 1 : studentFactor(df);
 }
 
 function end(parameter: BoundedParameter, start: number, step: number): number {
@@ -58,14 +98,10 @@ function edge(parameter: BoundedParameter, accepts: number, refuses: number): nu
   return inside;
 }
 
-function accepted({ departure, sd, upper, df }: BoundedParameter, value: number): boolean {
-  const widening = df === Number.POSITIVE_INFINITY ? 1 : studentFactor(df);
-  const z = departure(value) / widening;
-  const unit = sd(value) * widening;
-  const mean = value / unit;
-  const room = upper === Number.POSITIVE_INFINITY ? upper : (upper - value) / unit;
-  // a bound outside the two-sided region does not show in it
-  if (mean >= plainQuantile && room >= plainQuantile) return Math.abs(z) <= plainQuantile;
+function accepted(parameter: BoundedParameter, value: number): boolean {
+  const z = parameter.departure(value) / widening(parameter);
+  const { mean, room } = inStandardDeviations(parameter, value);
+  if (isClear({ mean, room })) return Math.abs(z) <= plainQuantile;
   const [low, high] = acceptance(mean, mean + room, confidence);
   return z >= low && z <= high;
 }

@@ -1,5 +1,6 @@
 import { type AmountEstimate, quadratic, varianceOf } from './amounts.ts';
 import { confidenceInterval } from './confidence-set.ts';
+import type { UncertainRatio } from './fieller.ts';
 import type { Quantified, RatioResult, SplitFraction } from './results.ts';
 
 /** Below this many standard deviations the sum cannot be told from nothing, and no fraction bounded. */
@@ -54,6 +55,7 @@ export function fractionAmong(
       return variance > 0 ? distance / Math.sqrt(variance) : 0;
     },
     sd: (fraction) => Math.sqrt(test(fraction).variance) / sum,
+    ratio: ratioOver(estimate, k, sumWeights),
   });
   return { value, standardUncertainty: Math.sqrt(at.variance) / sum, interval95 };
 }
@@ -79,6 +81,22 @@ function testOf(estimate: AmountEstimate, k: number, sumWeights: Float64Array) {
       variance,
       df: isKnown ? Number.POSITIVE_INFINITY : (variance / ofPoints) ** 2 * estimate.df,
     };
+  };
+}
+
+/** Amount k over a sum of amounts. */
+function ratioOver(estimate: AmountEstimate, k: number, sumWeights: Float64Array): UncertainRatio {
+  const { amounts, own, common } = estimate;
+  const unit = new Float64Array(amounts.length);
+  unit[k] = 1;
+  const covarianceOf = (a: Float64Array, b: Float64Array): number =>
+    quadratic(a, own, b) + quadratic(a, common, b);
+  return {
+    numerator: amounts[k]!,
+    denominator: dot(sumWeights, amounts),
+    numeratorVariance: covarianceOf(unit, unit),
+    denominatorVariance: covarianceOf(sumWeights, sumWeights),
+    covariance: covarianceOf(unit, sumWeights),
   };
 }
 
