@@ -33,8 +33,17 @@ export function studentTQuantile(p: number, df: number): number {
   if (df >= normalDf) return normalQuantile(p);
   // by the smaller tail, which keeps its digits; 1 - p is exact from 1/2 on
   if (p > 0.5) return -studentTQuantile(1 - p, df);
-  return p === 0.5 ? 0 : -positiveRoot((t) => studentTUpper(t, df) > p);
+  if (p === 0.5) return 0;
+  const known = lately.find((each) => each.p === p && each.df === df);
+  if (known) return known.quantile;
+  const quantile = -positiveRoot((t) => studentTUpper(t, df) > p);
+  lately = [{ p, df, quantile }, ...lately.slice(0, mostLately - 1)];
+  return quantile;
 }
+
+/** The last few quantiles: the amounts of one spectrum ask for the same ones over and over. */
+let lately: readonly { readonly p: number; readonly df: number; readonly quantile: number }[] = [];
+const mostLately = 8;
 
 /** The normal deviate with the same tail (G. W. Hill, algorithm 395, Comm. ACM 13 (1970) 617). */
 function equivalentNormal(t: number, df: number): number {
