@@ -1,71 +1,34 @@
-import {
-  filesOf,
-  openSheet,
-  prepare,
-  quantify,
-  quantifyAliquot,
-  readExport,
-} from '../analysis/index.ts';
-import { makeSample } from '../sample-data/scenario.ts';
+import { alarms } from './bench/alarms.ts';
+import { coverage, faultsTogether } from './bench/coverage.ts';
+import { efficiency } from './bench/efficiency.ts';
+import { instrument } from './bench/instrument.ts';
+import { sampleCoverage, timings } from './bench/sample.ts';
+import { speed } from './bench/speed.ts';
 
-/** Timings as ratios within one run, and the coverage of the sample by simulation. Nothing here is asserted. */
+/**
+ * Tables by simulation and timings as ratios within one run; nothing here is asserted.
+ * `npm run bench` prints all of them with few redraws, `npm run bench -- coverage 3000` one with many.
+ */
+const tables = {
+  timings: { draws: 0, print: timings },
+  speed: { draws: 0, print: speed },
+  sample: { draws: 100, print: sampleCoverage },
+  efficiency: { draws: 500, print: efficiency },
+  instrument: { draws: 200, print: instrument },
+  alarms: { draws: 400, print: alarms },
+  faults: { draws: 100, print: faultsTogether },
+  coverage: { draws: 100, print: coverage },
+};
 
-const sample = makeSample(20261201);
-const { sheet } = openSheet(JSON.stringify(sample.sheet));
-const bytesOf = (file: string): Uint8Array => sample.files.get(file) ?? new Uint8Array();
-const read = () => new Map(filesOf(sheet).map((file) => [file, readExport(bytesOf(file), file)]));
-const readings = read();
-
-/** Median of the milliseconds that a call takes, after warming up. */
-function median(work: () => void, rounds = 40): number {
-  for (let k = 0; k < 10; k++) work();
-  const times = Array.from({ length: rounds }, () => {
-    const start = performance.now();
-    work();
-    return performance.now() - start;
-  });
-  return times.sort((a, b) => a - b)[rounds >> 1] ?? Number.NaN;
+const [wanted, draws] = process.argv.slice(2);
+const names = Object.keys(tables) as (keyof typeof tables)[];
+const chosen = wanted === undefined ? names : names.filter((name) => name === wanted);
+if (chosen.length === 0) {
+  console.error(`There is no table "${wanted}"; there are ${names.join(', ')}.`);
+  process.exitCode = 2;
 }
-
-const prepared = prepare(sheet, readings);
-const [aliquot] = sheet.aliquots ?? [];
-if (!aliquot) throw new Error('the sample has no aliquot');
-const reading = median(() => {
-  read();
-});
-const refit = median(() => {
-  quantifyAliquot(prepared, aliquot, readings);
-});
-const whole = median(() => {
-  quantify(sheet, readings);
-}, 20);
-const rows = [
-  ['read the 9 exports of the sample', reading, 1],
-  ['one refit with intervals and doubts', refit, refit / reading],
-  ['the whole sheet, 6 aliquots', whole, whole / reading],
-] as const;
-console.log('what                                      ms   over reading');
-for (const [what, ms, ratio] of rows) {
-  console.log(`${what.padEnd(38)} ${ms.toFixed(1).padStart(6)}   ${ratio.toFixed(2)}`);
+for (const name of chosen) {
+  const table = tables[name];
+  await table.print(Number(draws ?? table.draws));
+  console.log('');
 }
-
-const seeds = Number(process.argv[2] ?? 300);
-let [inside, all] = [0, 0];
-for (let seed = 1; seed <= seeds; seed++) {
-  const redrawn = makeSample(seed);
-  const drawnSheet = openSheet(JSON.stringify(redrawn.sheet)).sheet;
-  const drawn = new Map([...redrawn.files].map(([file, bytes]) => [file, readExport(bytes, file)]));
-  for (const result of quantify(drawnSheet, drawn).results.aliquots) {
-    const truth = redrawn.truth.aliquots.find((each) => each.aliquot === result.aliquot);
-    const interval = result.split[0]?.fraction.interval95;
-    if (!truth || !interval || truth.hiddenBand !== null) continue;
-    all++;
-    if ((interval[0] ?? 0) <= truth.fractions.mono && truth.fractions.mono <= (interval[1] ?? 1))
-      inside++;
-  }
-}
-// the five clean aliquots of a redraw share the standards: they count as about one
-const error = Math.sqrt((0.05 * 0.95) / seeds);
-console.log(
-  `coverage of the mono fraction: ${((100 * inside) / all).toFixed(1)} % of ${all} intervals (Monte Carlo error about ${(100 * error).toFixed(1)} %)`,
-);

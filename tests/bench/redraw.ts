@@ -28,11 +28,7 @@ export interface Coverage {
 }
 
 /** How often the interval of the mono fraction held the truth. */
-export function coverageOf(
-  draws: number,
-  changes: Partial<Conditions>,
-  firstSeed = 1,
-): Coverage {
+export function coverageOf(draws: number, changes: Partial<Conditions>, firstSeed = 1): Coverage {
   const { fraction = 0.5 } = changes;
   let inside = 0;
   for (const { result } of redrawn(draws, changes, firstSeed)) {
