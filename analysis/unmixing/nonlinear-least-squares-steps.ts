@@ -59,8 +59,8 @@ export function pointAt(
 
 /**
  * Levenberg and Marquardt's search that only ever goes down: the damped step solves the Jacobian
- * with √damping · scale below it by orthogonal factors (Moré, Lecture Notes in Mathematics 630
- * (1978) 105), the damping follows how well the step kept its promise (Nielsen, IMM-REP-1999-05).
+ * with √damping · scale below it by orthogonal factors (Moré, in Numerical Analysis, Springer
+ * 1978, p. 105), the damping follows how well the step kept its promise (Nielsen, IMM-REP-1999-05).
  *
  * @param cosine the end: largest cosine between the residual and a column of the Jacobian, or a step
  *   that gained less than its square
