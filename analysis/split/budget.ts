@@ -50,7 +50,11 @@ function pointParts(unmixing: Unmixing, gradient: Float64Array): Part[] {
     shifts === 1
       ? noiseVariance(unmixing, size + baseline.length + shifts, gradient)
       : withBaseline;
-  const all = noiseVariance(unmixing, unmixing.fit.whitened.length, gradient);
+  const columns = unmixing.fit.whitened.length;
+  const all =
+    columns > size + baseline.length + shifts
+      ? noiseVariance(unmixing, columns, gradient)
+      : withShift;
   const fits = 1 - lackOfFit;
   return [
     { source: 'photometric noise', variance: fits * alone },
@@ -68,19 +72,29 @@ function noiseVariance(
   gradient: Float64Array,
 ): number {
   const priors = fit.priors.filter(({ parameter }) => parameter < columns);
-  const rows = factorise(withPriors(fit.whitened.slice(0, columns), priors)).pseudoInverse();
+  // all columns were fitted: their gain is there, else that of the first alone has to be found
+  const isWhole = columns === fit.whitened.length;
+  const rows = isWhole
+    ? fit.gain
+    : factorise(withPriors(fit.whitened.slice(0, columns), priors)).pseudoInverse();
   const points = fit.variance.length;
   const gain = new Float64Array(points);
-  let fromPriors = 0;
   for (let k = 0; k < species.length; k++) {
     const row = rows[k]!;
-    for (let i = 0; i < points; i++) {
-      gain[i]! += gradient[k]! * row[i]! * Math.sqrt(pointVariance[i]! / fit.variance[i]!);
-    }
+    const weight = gradient[k]!;
+    for (let i = 0; i < points; i++) gain[i]! += weight * row[i]!;
   }
-  for (let m = points; m < points + priors.length; m++) {
-    fromPriors +=
-      rows.slice(0, species.length).reduce((sum, row, k) => sum + gradient[k]! * row[m]!, 0) ** 2;
+  for (let i = 0; i < points; i++) {
+    const unit = isWhole ? pointVariance[i]! : pointVariance[i]! / fit.variance[i]!;
+    gain[i]! *= Math.sqrt(unit);
+  }
+  let fromPriors = 0;
+  for (let m = 0; m < priors.length; m++) {
+    let sum = 0;
+    for (let k = 0; k < species.length; k++) {
+      sum += gradient[k]! * (isWhole ? fit.priorGain[k]![m]! : rows[k]![points + m]!);
+    }
+    fromPriors += sum * sum;
   }
   const spread = spreadOut(at, gain);
   return dot(spread, correlate(correlation.rho, spread)) + fromPriors;

@@ -56,7 +56,7 @@ export function strongestBand(scan: Scan, correlation: NoiseCorrelation): Band |
     const { centres, widthNm } = templates;
     for (let c = 0; c < centres.length; c++) {
       if (most[c]! / inflation < atLeast) continue;
-      const { match, squares, whole } = matched(scan.nm, wholeScan, templates, c);
+      const { match, squares, whole } = matched(wholeScan, templates, c);
       // what the model can make of the band itself cannot be seen
       if (!(squares > 1e-6 * whole)) continue;
       const z = match / Math.sqrt(squares);
@@ -77,59 +77,94 @@ const blockNoise = 0.15;
 function roughSizes({ from, start, values, squares }: BandTemplates, blocks: Blocks) {
   const least = new Float64Array(from.length);
   const most = new Float64Array(from.length);
+  const slack = blockNoise * Math.sqrt(blocks.noise);
+  const along = new Float64Array(tiled(blocks.count));
   for (let c = 0; c < from.length; c++) {
-    const [first, end, shift] = [start[c]!, start[c + 1]!, from[c]! - start[c]!];
-    const match = Math.abs(dotFrom(values, first, end, blocks.residual, shift));
-    const whole = dotFrom(squares, first, end, blocks.weight, shift);
-    let rest = whole;
-    for (let m = 0; m < blocks.basis.length; m++) {
-      rest -= dotFrom(values, first, end, blocks.basis[m]!, shift) ** 2;
-    }
-    const slack = blockNoise * Math.sqrt(blocks.noise);
-    least[c] =
-      Math.max(match / Math.sqrt(whole) - slack, 0) /
-      Math.sqrt(Math.max(rest, 0) / whole + blockError);
-    most[c] =
-      (match / Math.sqrt(whole) + slack) / Math.sqrt(Math.max(rest / whole - blockError, 1e-12));
+    const [first, end] = [start[c]!, start[c + 1]!];
+    products(values, first, end, blocks, from[c]!, along);
+    let whole = 0;
+    for (let i = first, at = from[c]!; i < end; i++, at++)
+      whole += squares[i]! * blocks.weight[at]!;
+    const match = Math.abs(along[0]!) / Math.sqrt(whole);
+    const rest = withoutModel(whole, along) / whole;
+    least[c] = Math.max(match - slack, 0) / Math.sqrt(Math.max(rest, 0) + blockError);
+    most[c] = (match + slack) / Math.sqrt(Math.max(rest - blockError, 1e-12));
   }
   return { least, most };
 }
 
-function dotFrom(a: Float64Array, first: number, end: number, b: Float64Array, shift: number) {
-  let sum = 0;
-  for (let i = first; i < end; i++) sum += a[i]! * b[i + shift]!;
-  return sum;
+/** |b|² - Σ (b·q)²; the products with the basis stand behind that with the residual. */
+function withoutModel(whole: number, along: Float64Array): number {
+  let squares = whole;
+  for (let m = 1; m < along.length; m++) squares -= along[m]! * along[m]!;
+  return squares;
 }
 
 /** Sums over blocks of neighbours of what a band is multiplied with. */
 interface Blocks {
-  /** Residual over standard deviation. */
-  readonly residual: Float64Array;
+  /** How many vectors: the residual and each direction of the basis. */
+  readonly count: number;
+  /** The residual and the directions, each over the standard deviation: four side by side, block by block. */
+  readonly packed: Float64Array;
+  readonly blocks: number;
   /** 1/variance. */
   readonly weight: Float64Array;
-  /** Each direction of the basis over the standard deviation. */
-  readonly basis: readonly Float64Array[];
   /** Mean square of the residual, in variances. */
   readonly noise: number;
 }
 
+/** As many products as are found in one pass. */
+const side = 4;
+const tiled = (count: number) => side * Math.ceil(count / side);
+
 function blocksOf({ sd, residual, basis }: Scan, points: number): Blocks {
-  const summed = (vector: Float64Array | null): Float64Array => {
-    const sums = new Float64Array(Math.ceil(sd.length / points));
-    for (let block = 0, i = 0; block < sums.length; block++) {
-      const end = Math.min(i + points, sd.length);
+  const blocks = Math.ceil(sd.length / points);
+  const vectors = [residual, ...basis];
+  const packed = new Float64Array(tiled(vectors.length) * blocks);
+  for (const [m, vector] of vectors.entries()) {
+    const from = Math.floor(m / side) * blocks * side + (m % side);
+    for (let block = 0; block < blocks; block++) {
+      const end = Math.min((block + 1) * points, sd.length);
       let sum = 0;
-      for (; i < end; i++) sum += (vector === null ? 1 / sd[i]! : vector[i]!) / sd[i]!;
-      sums[block] = sum;
+      for (let i = block * points; i < end; i++) sum += vector[i]! / sd[i]!;
+      packed[from + block * side] = sum;
     }
-    return sums;
-  };
-  return {
-    residual: summed(residual),
-    weight: summed(null),
-    basis: basis.map(summed),
-    noise: dotFrom(residual, 0, residual.length, residual, 0) / residual.length,
-  };
+  }
+  const weight = new Float64Array(blocks);
+  let noise = 0;
+  for (let i = 0; i < sd.length; i++) {
+    weight[Math.floor(i / points)]! += 1 / (sd[i]! * sd[i]!);
+    noise += residual[i]! * residual[i]!;
+  }
+  return { count: vectors.length, packed, blocks, weight, noise: noise / sd.length };
+}
+
+/** Products of values[first…end) with each vector from block `at` on. */
+function products(
+  values: Float64Array,
+  first: number,
+  end: number,
+  { count, packed, blocks }: Blocks,
+  at: number,
+  out: Float64Array,
+): void {
+  for (let m = 0; m < count; m += side) {
+    let s0 = 0;
+    let s1 = 0;
+    let s2 = 0;
+    let s3 = 0;
+    for (let i = first, p = (m / side) * blocks * side + at * side; i < end; i++, p += side) {
+      const value = values[i]!;
+      s0 += value * packed[p]!;
+      s1 += value * packed[p + 1]!;
+      s2 += value * packed[p + 2]!;
+      s3 += value * packed[p + 3]!;
+    }
+    out[m] = s0;
+    out[m + 1] = s1;
+    out[m + 2] = s2;
+    out[m + 3] = s3;
+  }
 }
 
 /** z of a band with noise that is correlated from point to point allowed for. */
@@ -184,25 +219,16 @@ export function bandColumn(
  * with the model taken out: |b|² - Σ (b·q)². (The residual has the model taken out already.)
  */
 function matched(
-  nm: Float64Array,
-  { residual, weight, basis }: Blocks,
-  { centres, widthNm, first: firsts, end: ends }: BandTemplates,
+  blocks: Blocks,
+  { bands, pointStart, first }: BandTemplates,
   c: number,
 ): { match: number; squares: number; whole: number } {
-  const [place, first, end] = [centres[c]!, firsts[c]!, ends[c]!];
-  const band = new Float64Array(end - first);
-  let match = 0;
+  const [from, to] = [pointStart[c]!, pointStart[c + 1]!];
   let whole = 0;
-  for (let i = first; i < end; i++) {
-    const distance = (nm[i]! - place) / widthNm;
-    const value = Math.exp(-0.5 * distance * distance);
-    band[i - first] = value;
-    match += value * residual[i]!;
-    whole += value * value * weight[i]!;
+  for (let i = from, at = first[c]!; i < to; i++, at++) {
+    whole += bands[i]! * bands[i]! * blocks.weight[at]!;
   }
-  let squares = whole;
-  for (let m = 0; m < basis.length; m++) {
-    squares -= dotFrom(band, 0, band.length, basis[m]!, first) ** 2;
-  }
-  return { match, squares, whole };
+  const along = new Float64Array(tiled(blocks.count));
+  products(bands, from, to, blocks, first[c]!, along);
+  return { match: along[0]!, squares: withoutModel(whole, along), whole };
 }

@@ -13,9 +13,12 @@ export interface BandTemplates {
   readonly points: number;
   /** Wavelengths of the middles. */
   readonly centres: Float64Array;
-  /** First point of each band, and the one after its last. */
+  /** First point of each band. */
   readonly first: Int32Array;
-  readonly end: Int32Array;
+  /** Where each band's points begin in `bands`; one more than there are bands. */
+  readonly pointStart: Int32Array;
+  /** The bands, point by point; band after band. */
+  readonly bands: Float64Array;
   /** First block of each band. */
   readonly from: Int32Array;
   /** Where each band's entries begin in `values` and `squares`; one more than there are bands. */
@@ -59,8 +62,9 @@ function templatesOf(nm: Float64Array, widthNm: number): BandTemplates {
   const centres = nm.filter((_, i) => i % stride === 0);
   const from = new Int32Array(centres.length);
   const firsts = new Int32Array(centres.length);
-  const ends = new Int32Array(centres.length);
   const start = new Int32Array(centres.length + 1);
+  const pointStart = new Int32Array(centres.length + 1);
+  const bands: number[] = [];
   const values: number[] = [];
   const squares: number[] = [];
   for (const [c, centre] of centres.entries()) {
@@ -70,7 +74,6 @@ function templatesOf(nm: Float64Array, widthNm: number): BandTemplates {
     let end = first;
     while (end < nm.length && inside(end)) end++;
     firsts[c] = first;
-    ends[c] = end;
     from[c] = Math.floor(first / points);
     for (let block = from[c]!; block * points < end; block++) {
       const last = Math.min((block + 1) * points, nm.length);
@@ -78,6 +81,7 @@ function templatesOf(nm: Float64Array, widthNm: number): BandTemplates {
       for (let i = block * points; i < last; i++) {
         if (i < first || i >= end) continue;
         const value = Math.exp(-0.5 * ((nm[i]! - centre) / widthNm) ** 2);
+        bands.push(value);
         sum += value;
         square += value * value;
       }
@@ -85,13 +89,15 @@ function templatesOf(nm: Float64Array, widthNm: number): BandTemplates {
       squares.push(square / (last - block * points));
     }
     start[c + 1] = values.length;
+    pointStart[c + 1] = bands.length;
   }
   return {
     widthNm,
     points,
     centres,
     first: firsts,
-    end: ends,
+    pointStart,
+    bands: Float64Array.from(bands),
     from,
     start,
     values: Float64Array.from(values),

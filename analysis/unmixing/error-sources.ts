@@ -1,5 +1,4 @@
 import { smoothed } from '../spectrum/correlated-noise.ts';
-import { stencil } from '../spectrum/interpolate.ts';
 import { dot } from '../spectrum/vectors.ts';
 import type { MolarAbsorptivity } from '../standards/molar-absorptivity.ts';
 import type { Unmixing } from './unmix.ts';
@@ -141,13 +140,12 @@ function standardNoiseEffect(
   const part = partOf(molarAbsorptivity, species, solution);
   const strength = -Math.sqrt(standardsLevel) * pathLengthCm * Math.max(amounts[species]!, 0);
   const effect = new Float64Array(part.sd.length);
-  for (const [j, i] of at.entries()) {
-    const share = part.share[i]!;
-    if (share === 0) continue;
-    const size = strength * gain[j]! * share;
-    for (let m = i * stencil; m < (i + 1) * stencil; m++) {
-      effect[part.map.index[m]!]! += size * part.map.weight[m]!;
-    }
+  if (strength === 0) return effect;
+  const { start, point, value } = part.gives;
+  for (let j = 0; j < at.length; j++) {
+    const i = at[j]!;
+    const size = strength * gain[j]!;
+    for (let m = start[i]!; m < start[i + 1]!; m++) effect[point[m]!]! += size * value[m]!;
   }
   for (let j = 0; j < effect.length; j++) effect[j]! *= part.sd[j]!;
   return smoothed(correlation.kernel, effect);

@@ -1,4 +1,6 @@
 import { absorbanceVariance, type NoiseModel } from '../spectrum/noise.ts';
+import { divided, rooted } from '../spectrum/vectors.ts';
+import { settledFit } from './batch/settled-fit.ts';
 import { factorise, type OrthogonalFactors } from './orthogonal.ts';
 
 /** A weighted linear fit. Parameters are in the order of the columns. */
@@ -59,19 +61,22 @@ export function weightedFit(
   standardsVariance: (parameters: Float64Array) => Float64Array,
   priors: readonly Prior[] = [],
 ): WeightedFit {
-  let fitted = measured;
-  let extra = new Float64Array(measured.length);
-  let settled = false;
+  const start =
+    priors.length === 0 ? settledFit(columns, measured, noise, standardsVariance) : null;
+  let fitted = start?.fitted ?? measured;
+  let extra = start?.extra ?? new Float64Array(measured.length);
+  let settled = start !== null;
   for (let round = 0; ; round++) {
-    const noiseVariance = fitted.map((absorbance) => absorbanceVariance(noise, absorbance));
-    const variance = noiseVariance.map((value, i) => value + extra[i]!);
-    const sd = variance.map(Math.sqrt);
-    const whitened = columns.map((column) => column.map((value, i) => value / sd[i]!));
+    const noiseVariance = new Float64Array(measured.length);
+    const variance = new Float64Array(measured.length);
+    for (let i = 0; i < variance.length; i++) {
+      noiseVariance[i] = absorbanceVariance(noise, fitted[i]!);
+      variance[i] = noiseVariance[i]! + extra[i]!;
+    }
+    const sd = rooted(variance);
+    const whitened = columns.map((column) => divided(column, sd));
     const factors = factorise(withPriors(whitened, priors), undefined, likeOthers);
-    const right = withPriorValues(
-      measured.map((value, i) => value / sd[i]!),
-      priors,
-    );
+    const right = withPriorValues(divided(measured, sd), priors);
     const parameters =
       factors.condition < plainCondition ? factors.solvePlain(right) : factors.solve(right);
     const before = fitted;
@@ -124,7 +129,8 @@ function extended(vector: Float64Array, more: readonly number[]): Float64Array {
 /** Σ columns · parameters, one entry a point. */
 export function modelled(columns: readonly Float64Array[], parameters: Float64Array): Float64Array {
   const sum = new Float64Array(columns[0]?.length ?? 0);
-  for (const [k, column] of columns.entries()) {
+  for (let k = 0; k < columns.length; k++) {
+    const column = columns[k]!;
     const parameter = parameters[k]!;
     for (let i = 0; i < sum.length; i++) sum[i]! += parameter * column[i]!;
   }
@@ -133,8 +139,8 @@ export function modelled(columns: readonly Float64Array[], parameters: Float64Ar
 
 function largestChange(before: Float64Array, after: Float64Array): number {
   let largest = 0;
-  for (const [i, value] of after.entries()) {
-    largest = Math.max(largest, Math.abs(value - before[i]!));
+  for (let i = 0; i < after.length; i++) {
+    largest = Math.max(largest, Math.abs(after[i]! - before[i]!));
   }
   return largest;
 }
@@ -154,19 +160,20 @@ function finished(
   parameters: Float64Array,
   { variance, noiseVariance, sd, whitened, factors, priors }: Solved,
 ): WeightedFit {
-  const residual = measured.map((value, i) => value - fitted[i]!);
+  const residual = new Float64Array(measured.length);
+  for (let i = 0; i < residual.length; i++) residual[i] = measured[i]! - fitted[i]!;
   const points = measured.length;
   const df = points + priors.length - factors.rank;
   const inverse = factors.pseudoInverse();
   let chiSquare = 0;
-  for (const [i, value] of residual.entries()) chiSquare += (value * value) / variance[i]!;
+  for (let i = 0; i < points; i++) chiSquare += (residual[i]! * residual[i]!) / variance[i]!;
   return {
     parameters,
     fitted,
     residual,
     variance,
     noiseVariance,
-    gain: inverse.map((row) => row.subarray(0, points).map((value, i) => value / sd[i]!)),
+    gain: inverse.map((row) => divided(row.subarray(0, points), sd)),
     priorGain: inverse.map((row) => row.subarray(points)),
     priors,
     condition: factors.condition,
