@@ -21,7 +21,7 @@ import { noiseOfScans } from './standards/noise-scans.ts';
 import type { SpeciesStandard } from './standards/species-standard.ts';
 import { pointUse } from './unmixing/choose-points.ts';
 import { commonEffects, errorSources } from './unmixing/error-sources.ts';
-import { type Unmixing, unmix } from './unmixing/unmix.ts';
+import { type UnmixInput, type Unmixing, unmix } from './unmixing/unmix.ts';
 
 /**
  * The whole sheet, computed. `readings` holds one reading for each file that the sheet points at
@@ -110,18 +110,9 @@ export function quantifyAliquot(
   readings: ReadonlyMap<string, Reading>,
 ): QuantifiedAliquot {
   const { sheet, settings, library } = prepared;
-  const what = `aliquot ${aliquot.id}`;
-  const crude = resolveSpectrum(aliquot.spectrum, readings, 'absorbance', what);
-  const pathLengthCm = aliquot.pathLengthCm ?? 1;
-  const unmixing = unmix({
-    crude,
-    standardsAt: (strayLight) => prepared.libraryAt(strayLight).standards,
-    noiseSamples: library.noiseSamples,
-    noiseLevelSeen: library.noiseLevelSeen,
-    pathLengthCm,
-    settings,
-    what,
-  });
+  const input = unmixInput(prepared, aliquot, readings);
+  const { crude } = input;
+  const unmixing = unmix(input);
   const sources = errorSources(unmixing);
   const estimate = estimateOf(unmixing, sources);
   const products = productPositions(prepared);
@@ -158,6 +149,24 @@ export function quantifyAliquot(
   };
 }
 
+/** What the unmixing of one aliquot is given. Throws a `Refusal` where its spectrum cannot be used. */
+export function unmixInput(
+  { settings, library, libraryAt }: PreparedSheet,
+  aliquot: SheetAliquot,
+  readings: ReadonlyMap<string, Reading>,
+): UnmixInput {
+  const what = `aliquot ${aliquot.id}`;
+  return {
+    crude: resolveSpectrum(aliquot.spectrum, readings, 'absorbance', what),
+    standardsAt: (strayLight) => libraryAt(strayLight).standards,
+    noiseSamples: library.noiseSamples,
+    noiseLevelSeen: library.noiseLevelSeen,
+    pathLengthCm: aliquot.pathLengthCm ?? 1,
+    settings,
+    what,
+  };
+}
+
 /** What of the window could not be fitted because a standard or the crude does not reach there. */
 function windowNotes({ use, at }: Unmixing, { windowNm }: FitSettings, nm: Float64Array): string[] {
   const uncovered = use.filter((reason) => reason === pointUse.noStandard).length;
@@ -169,7 +178,7 @@ function windowNotes({ use, at }: Unmixing, { windowNm }: FitSettings, nm: Float
 }
 
 /** Positions of the products among the species that are fitted. */
-function productPositions({ sheet, library }: PreparedSheet): number[] {
+export function productPositions({ sheet, library }: PreparedSheet): number[] {
   const products = new Set(productSpecies(sheet).map(({ id }) => id));
   return library.standards.flatMap(({ species }: SpeciesStandard, k) =>
     products.has(species) ? [k] : [],
