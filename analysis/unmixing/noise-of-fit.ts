@@ -83,10 +83,11 @@ export function noiseOfFit(
       band: null,
     };
   }
-  const slight = withoutBand.z ** 2 < slightShare * at.length;
+  const size = Math.abs(sizeAmongNoise(withoutBand, correlation, step));
+  const slight = size < Math.max(Math.sqrt(slightShare * at.length), sureToLook);
   const cleaned = slight
     ? withSlightBand(points, withoutBand, plain, correlation, from)
-    : withBandOut(points, scan, withoutBand, near, from);
+    : withBandsOut(points, scan, near, from);
   if (Math.abs(cleaned.band.size) <= cleaned.band.limit) {
     return {
       correlation,
@@ -136,6 +137,8 @@ export function cleanedResidual({ nm, fit, beside }: Omit<FittedPoints, 'at'>): 
 
 /** Share of the residual up to which a band leaves the correlation of the noise as it is. */
 const slightShare = 0.1;
+/** Size from which a band is taken out before the noise is looked at again, however few the points. */
+const sureToLook = 5;
 
 /** The band against the noise as the whole residual shows it. */
 function withSlightBand(
@@ -154,18 +157,28 @@ function withSlightBand(
   };
 }
 
-function withBandOut(
+/** A hidden band of another width than those looked for is several of them. */
+const mostBands = 3;
+
+/** The strongest band against the noise that is left once it, and what it leaves, are out. */
+function withBandsOut(
   { at, nm }: FittedPoints,
   scan: Scan,
-  band: Band,
   near: readonly NoiseSample[],
   from: KnownNoise['from'],
 ): { correlation: NoiseCorrelation; level: number; band: FoundBand } {
-  const basis = orthonormal([bandColumn(scan, band)], scan.basis);
-  const rest = sampleOf(at, projectedOut(basis, scan.residual), basis);
-  const correlation = noiseCorrelation([rest, ...near]);
-  const { variance, df } = levelOf(rest, correlation.rho);
+  let rest = scan;
+  for (let count = 0; count < mostBands; count++) {
+    const next = strongestBand(rest, independent);
+    if (!next || (count > 0 && next.z ** 2 < slightShare * at.length)) break;
+    const basis = orthonormal([bandColumn(scan, next)], rest.basis);
+    rest = { ...rest, basis, residual: projectedOut(basis, rest.residual) };
+  }
+  const residual = sampleOf(at, rest.residual, rest.basis);
+  const correlation = noiseCorrelation([residual, ...near]);
+  const { variance, df } = levelOf(residual, correlation.rho);
   const { level, measured } = levelToUse(variance, df, from);
+  const band = strongestBand(scan, correlation) ?? { nm: nm[0] ?? 0, widthNm: 1, height: 0, z: 0 };
   return {
     correlation,
     level,
