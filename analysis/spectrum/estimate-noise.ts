@@ -64,14 +64,26 @@ interface Readings {
  * √12. Where an instrument prints three decimals, a flat stretch shows no other noise.
  */
 export function roundingSd(values: Float64Array): number {
-  const sorted = values.filter((value) => !Number.isNaN(value)).sort();
+  const known = knownRounding.get(values);
+  if (known !== undefined) return known;
+  const found = smallestStep(values) / Math.sqrt(12);
+  knownRounding.set(values, found);
+  return found;
+}
+
+/** One spectrum is asked for its rounding several times on its way. */
+const knownRounding = new WeakMap<Float64Array, number>();
+
+/** 0 where no two values differ. */
+function smallestStep(values: Float64Array): number {
+  const sorted = values.slice().sort();
   let step = Number.POSITIVE_INFINITY;
   for (let i = 1; i < sorted.length; i++) {
     const gap = sorted[i]! - sorted[i - 1]!;
-    // differences of decimals in doubles: what is this small is rounding of the same number
+    // differences of decimals in doubles: what is this small is rounding of the same number; NaN (sorted last) is none
     if (gap > 1e-9 && gap < step) step = gap;
   }
-  return Number.isFinite(step) ? step / Math.sqrt(12) : 0;
+  return Number.isFinite(step) ? step : 0;
 }
 
 function predictionErrors(
@@ -125,21 +137,46 @@ export interface NoiseLevelAt {
 
 /** Medians of the prediction errors in bins of absorbance, what is known to be another's taken off. */
 function levelsInBins({ errors, at, known }: Prediction, floor: number): NoiseLevelAt[] {
-  const order = Array.from(at.keys()).sort((a, b) => at[a]! - at[b]!);
-  const bins = Math.min(mostBins, Math.floor(order.length / smallestSample));
-  return Array.from({ length: bins }, (_, bin) => {
-    const members = order.slice(
-      Math.floor((bin * order.length) / bins),
-      Math.floor(((bin + 1) * order.length) / bins),
-    );
-    const sd = medianToSd * xMedian(Float64Array.from(members, (i) => Math.abs(errors[i]!)));
-    const rise = xMedian(Float64Array.from(members, (i) => 100 ** at[i]!));
-    const total = Math.max(sd, floor) ** 2;
-    const elsewhere = members.reduce((sum, i) => sum + known[i]!, 0) / members.length;
-    // what is not noise of this spectrum may be mistaken too: a tenth of it all is left to noise
-    const variance = Math.max(total - elsewhere, 0.1 * total);
-    return { variance, flat: 1, rise, points: members.length };
-  });
+  return binsByRank(at, Math.min(mostBins, Math.floor(at.length / smallestSample))).map(
+    (members) => {
+      const sd = medianToSd * xMedian(Float64Array.from(members, (i) => Math.abs(errors[i]!)));
+      const rise = xMedian(Float64Array.from(members, (i) => 100 ** at[i]!));
+      const total = Math.max(sd, floor) ** 2;
+      const elsewhere = members.reduce((sum, i) => sum + known[i]!, 0) / members.length;
+      // what is not noise of this spectrum may be mistaken too: a tenth of it all is left to noise
+      const variance = Math.max(total - elsewhere, 0.1 * total);
+      return { variance, flat: 1, rise, points: members.length };
+    },
+  );
+}
+
+/** Places of the values in bins of equal count from the lowest up; of equal values the first come first. */
+function binsByRank(values: Float64Array, bins: number): number[][] {
+  const sorted = values.slice().sort();
+  const seen = new Map<number, number>();
+  const members = Array.from({ length: bins }, (): number[] => []);
+  const ends = members.map((_, bin) => Math.floor(((bin + 1) * values.length) / bins));
+  for (let i = 0; i < values.length && bins > 0; i++) {
+    const value = values[i]!;
+    const before = seen.get(value) ?? 0;
+    seen.set(value, before + 1);
+    const rank = placeIn(sorted, value) + before;
+    let bin = 0;
+    while (rank >= ends[bin]!) bin++;
+    members[bin]!.push(i);
+  }
+  return members;
+}
+
+/** How many entries of an ascending vector are below the value. */
+function placeIn(sorted: Float64Array, value: number): number {
+  let [low, high] = [0, sorted.length];
+  while (low < high) {
+    const middle = (low + high) >> 1;
+    if (sorted[middle]! < value) low = middle + 1;
+    else high = middle;
+  }
+  return low;
 }
 
 /**

@@ -1,6 +1,7 @@
 import type { FitSettings } from '../sheet/defaults.ts';
 import { absorbanceVariance } from '../spectrum/noise.ts';
 import type { Spectrum } from '../spectrum/spectrum.ts';
+import { taken } from '../spectrum/vectors.ts';
 import { linearityOf } from '../standards/linearity.ts';
 import { molarAbsorptivityAt } from '../standards/molar-absorptivity.ts';
 import type { SpeciesStandard } from '../standards/species-standard.ts';
@@ -23,9 +24,10 @@ export function aliquotCurves(
     absorbance: molarAbsorptivity[k]!.epsilon.map((value) => pathLengthCm * drawn[k]! * value),
   }));
   const baseline = drawnBaseline(crude, unmixing, settings);
-  const fitted = wavelengthNm.map((_, i) =>
-    contributions.reduce((sum, { absorbance }) => sum + absorbance[i]!, baseline[i]!),
-  );
+  const fitted = baseline.slice();
+  for (const { absorbance } of contributions) {
+    for (let i = 0; i < fitted.length; i++) fitted[i]! += absorbance[i]!;
+  }
   const everyPoint = Int32Array.from(wavelengthNm.keys());
   const extra = standardsVariance(molarAbsorptivity, everyPoint, pathLengthCm, drawn);
   return {
@@ -49,7 +51,7 @@ function drawnBaseline(
   { at, baseline }: Unmixing,
   settings: FitSettings,
 ): Float64Array {
-  const fittedNm = Float64Array.from(at, (i) => crude.wavelengthNm[i]!);
+  const fittedNm = taken(crude.wavelengthNm, at);
   const terms = baselineColumns(crude.wavelengthNm, settings.baseline, fittedNm);
   const sum = new Float64Array(crude.wavelengthNm.length);
   for (const [m, { column }] of terms.entries()) {

@@ -7,6 +7,7 @@ import {
   twoParts,
 } from '../spectrum/estimate-noise.ts';
 import type { NoiseModel } from '../spectrum/noise.ts';
+import { taken } from '../spectrum/vectors.ts';
 import type { SampledNoise } from '../standards/contrasts.ts';
 import { cleanedResidual } from './noise-of-fit.ts';
 import type { Measurement, Solution } from './solve.ts';
@@ -50,7 +51,7 @@ export function noiseModelOf(
   }
   const { fit } = solution;
   if (fit.df >= fewestForTwoParts) return noiseOfSquares(input, others, at, solution);
-  const nm = Float64Array.from(at, (i) => crude.wavelengthNm[i]!);
+  const nm = taken(crude.wavelengthNm, at);
   const estimate = estimateNoise(nm, fit.residual, fit.fitted, roundingSd(crude.values));
   if (estimate) return { noise: estimate, known: true, alike: [] };
   if (fit.df < fewestForNoise) {
@@ -76,7 +77,7 @@ function noiseOfSquares(
   at: Int32Array,
   { fit, molarAbsorptivity }: Solution,
 ): FoundNoise {
-  const nm = Float64Array.from(at, (i) => crude.wavelengthNm[i]!);
+  const nm = taken(crude.wavelengthNm, at);
   const slope = shiftSlope(molarAbsorptivity, at, pathLengthCm, fit.parameters);
   const { residual, directions } = cleanedResidual({ nm, fit, beside: [slope] });
   const ofStandards = standardsVariance(molarAbsorptivity, at, pathLengthCm, fit.parameters);

@@ -9,10 +9,17 @@ import type { WeightedFit } from './weighted-fit.ts';
  *
  * @param species number of species; their columns come first in the fit
  */
-export function separationOf({ whitened }: WeightedFit, species: number): number[] {
+export function separationOf(fit: WeightedFit, species: number): number[] {
+  const { whitened, gain, variance, unseen, priors } = fit;
   const beside = orthonormal(whitened.slice(species));
   return whitened.slice(0, species).map((column, k) => {
     const alone = projectedOut(beside, column);
+    if (unseen.length === 0 && priors.length === 0) {
+      // what the others leave of a column is one over the length of its row of the pseudo-inverse
+      let squares = 0;
+      for (let i = 0; i < variance.length; i++) squares += gain[k]![i]! ** 2 * variance[i]!;
+      return Math.sqrt(dot(alone, alone) * squares);
+    }
     const others = orthonormal(whitened.filter((_, l) => l !== k));
     const together = projectedOut(others, column);
     const [most, left] = [dot(alone, alone), dot(together, together)];

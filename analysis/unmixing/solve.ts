@@ -2,6 +2,7 @@ import type { FitSettings } from '../sheet/defaults.ts';
 import type { NoiseModel } from '../spectrum/noise.ts';
 import type { Spectrum } from '../spectrum/spectrum.ts';
 import { withoutStrayLight } from '../spectrum/stray-light.ts';
+import { taken } from '../spectrum/vectors.ts';
 import { type MolarAbsorptivity, molarAbsorptivityAt } from '../standards/molar-absorptivity.ts';
 import type { SpeciesStandard } from '../standards/species-standard.ts';
 import { type Design, designOf } from './design.ts';
@@ -65,7 +66,7 @@ export function solveWith(
     const moved = standardsAt(standards, crude.wavelengthNm, shiftNm);
     const design = designOf(moved, crude.wavelengthNm, at, pathLengthCm, settings.baseline);
     const columns = [...design.species, ...design.baseline.map(({ column }) => column)];
-    const measured = Float64Array.from(at, (i) => withoutStrayLight(crude.values[i]!, strayLight));
+    const measured = withoutStray(taken(crude.values, at), strayLight);
     return { standards, moved, design, columns, measured };
   };
   const weighing = (moved: readonly MolarAbsorptivity[]) => (parameters: Float64Array) =>
@@ -153,6 +154,10 @@ function strayLightSlope(here: LinearModel, more: LinearModel, parameters: Float
   return before.map((value, i) => (after[i]! - value) / strayLightStep);
 }
 
+function withoutStray(read: Float64Array, strayLight: number): Float64Array {
+  return strayLight === 0 ? read : read.map((value) => withoutStrayLight(value, strayLight));
+}
+
 /** The absorbance from which stray light can bend a reading by more than it is read. */
 const strayLightShows = 0.8;
 
@@ -179,7 +184,7 @@ export function strayLightColumn(
     { columns: columnsOf(design), measured },
     {
       columns: columnsOf(changed),
-      measured: Float64Array.from(at, (i) => withoutStrayLight(crude.values[i]!, strayLight)),
+      measured: withoutStray(taken(crude.values, at), strayLight),
     },
     fit.parameters,
   );

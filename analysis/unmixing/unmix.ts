@@ -2,7 +2,7 @@ import { Refusal } from '../refusal.ts';
 import type { FitSettings } from '../sheet/defaults.ts';
 import { correlate, type NoiseCorrelation } from '../spectrum/correlated-noise.ts';
 import type { NoiseModel } from '../spectrum/noise.ts';
-import { dot, orthonormal, projectedOut } from '../spectrum/vectors.ts';
+import { dot, orthonormal, projectedOut, taken } from '../spectrum/vectors.ts';
 import type { SampledNoise } from '../standards/contrasts.ts';
 import type { MolarAbsorptivity } from '../standards/molar-absorptivity.ts';
 import type { SpeciesStandard } from '../standards/species-standard.ts';
@@ -102,7 +102,7 @@ export function unmix(input: UnmixInput): Unmixing {
   const { noise, known, alike } = noiseModelOf(input, input.noiseSamples, at, first);
   const solved = settings.noise ? first : solveWith(input, at, noise, first);
   const { fit, sizes, molarAbsorptivity, design } = solved;
-  const nm = Float64Array.from(at, (i) => crude.wavelengthNm[i]!);
+  const nm = taken(crude.wavelengthNm, at);
   const shiftColumn =
     settings.shift === 'none'
       ? shiftSlope(molarAbsorptivity, at, pathLengthCm, fit.parameters)
