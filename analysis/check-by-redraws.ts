@@ -75,7 +75,7 @@ export function* checkByRedraws(
   for (let draw = 0; draw < draws; draw++) {
     const { drawn } = unmix(redrawnInput(input, unmixing, random));
     const { factor, relativeStandardUncertainty } = estimate.dilution;
-    const dilution = factor * (1 + relativeStandardUncertainty * random.normal());
+    const dilution = factor * Math.exp(relativeStandardUncertainty * random.normal());
     for (const [q, { read }] of rows.entries()) values[q]![draw] = read(drawn, dilution);
     yield draw + 1;
   }

@@ -1,4 +1,10 @@
 /** The only door to the science: what main/ and renderer/ may import. */
+export {
+  checkByRedraws,
+  type RedrawCheck,
+  type RedrawnQuantity,
+  usualDraws,
+} from './check-by-redraws.ts';
 export type { Doubt } from './doubts/doubt.ts';
 export { programName } from './program.ts';
 export { type PreparedSheet, prepare, quantify, quantifyAliquot } from './quantify.ts';
@@ -67,6 +73,7 @@ export type {
 } from './sheet/schema.ts';
 export { sheetText } from './sheet/sheet-text.ts';
 export { embedSpectra, filesOf, knownOf } from './sheet/spectra.ts';
+export { budgetAdvice } from './split/budget-advice.ts';
 export {
   type AliquotCurves,
   type AliquotResult,

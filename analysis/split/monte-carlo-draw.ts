@@ -71,9 +71,9 @@ interface StandardsNoise {
 }
 
 /**
- * The standards as they could as well have been recorded and weighed, combined anew. Scales: the
- * true concentration is the stated one times 1 + error; a stock's error is one and the same in all
- * its solutions.
+ * The standards as they could as well have been recorded and weighed, combined anew. Scales are drawn
+ * on their logarithm, as `combineSolutions` takes them; a stock's error is one and the same in all its
+ * solutions.
  */
 export function redrawnStandard(
   standard: SpeciesStandard,
@@ -82,13 +82,15 @@ export function redrawnStandard(
 ): SpeciesStandard {
   const { species, solutions, offsets, scaleErrors, constantUncertainty } = standard;
   const scatter = scaleErrors.find(({ source }) => source === scatterOf(species))?.relative ?? 0;
-  const ofSpecies = 1 + scatter * (draw.common.get(scatterOf(species)) ?? 0);
+  const ofSpecies = scatter * (draw.common.get(scatterOf(species)) ?? 0);
   const constant = constantUncertainty * (draw.constant.get(species) ?? 0);
   const redrawn = solutions.map((solution, s): Solution => {
     const noise = draw.noise.get(solution.standard);
-    const scale = solution.scaleErrors.reduce(
-      (product, { source, relative }) => product * (1 + relative * (draw.common.get(source) ?? 0)),
-      ofSpecies,
+    const scale = Math.exp(
+      solution.scaleErrors.reduce(
+        (sum, { source, relative }) => sum + relative * (draw.common.get(source) ?? 0),
+        ofSpecies,
+      ),
     );
     // the offset was taken out of the recording: it goes back, to be found again
     const shift = constant + (offsets[s] ?? 0) / absorbanceScale(solution);

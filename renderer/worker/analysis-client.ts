@@ -1,5 +1,11 @@
-import { type Remote, wrap } from 'comlink';
-import type { Quantification, Reading, ReadOptions, Sheet } from '../../analysis/index.ts';
+import { proxy, type Remote, wrap } from 'comlink';
+import type {
+  Quantification,
+  Reading,
+  ReadOptions,
+  RedrawCheck,
+  Sheet,
+} from '../../analysis/index.ts';
 import type { AnalysisWorker, Outcome, ReportTexts } from './analysis.worker.ts';
 
 interface Started {
@@ -40,3 +46,14 @@ export const readFileBytes = (
 
 export const reportTexts = (sheet: Sheet): Promise<Outcome<ReportTexts>> =>
   asked(async (calls) => calls.report(sheet, new Date().toISOString()));
+
+/** Null if it was stopped, or if another check took its place. `onProgress` is given the draws done. */
+export const redrawAliquot = (
+  sheet: Sheet,
+  aliquot: string,
+  draws: number,
+  onProgress: (done: number) => void,
+): Promise<Outcome<RedrawCheck | null>> =>
+  asked(async (calls) => calls.redraw(sheet, aliquot, draws, proxy(onProgress)));
+
+export const stopRedraws = (): Promise<void> => asked(async (calls) => calls.stopRedraws());

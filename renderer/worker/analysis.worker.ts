@@ -1,9 +1,11 @@
 import { expose } from 'comlink';
 import {
+  checkByRedraws,
   type Quantification,
   quantify,
   type Reading,
   type ReadOptions,
+  type RedrawCheck,
   Refusal,
   type RefusalText,
   readExport,
@@ -13,6 +15,7 @@ import {
   type Sheet,
   sheetSources,
 } from '../../analysis/index.ts';
+import { inSlices } from './in-slices.ts';
 
 /** The science off the screen's thread. Errors lose their fields on the way, so refusals cross as data. */
 export type Outcome<T> =
@@ -27,6 +30,9 @@ export interface ReportTexts {
 
 const noFiles: ReadonlyMap<string, Reading> = new Map();
 
+/** The check that runs; another one, or a stop, takes its place and so ends it. */
+let redrawing = 0;
+
 const analysis = {
   read: (
     file: { readonly name: string; readonly bytes: Uint8Array },
@@ -34,6 +40,28 @@ const analysis = {
   ): Reading => readExport(file.bytes, file.name, options),
 
   quantify: (sheet: Sheet): Outcome<Quantification> => outcome(() => quantify(sheet, noFiles)),
+
+  /** Null if it was stopped. Other calls are answered between its slices. */
+  redraw: async (
+    sheet: Sheet,
+    aliquot: string,
+    draws: number,
+    onProgress: (done: number) => void,
+  ): Promise<Outcome<RedrawCheck | null>> => {
+    redrawing += 1;
+    const mine = redrawing;
+    try {
+      const check = checkByRedraws(sheet, noFiles, aliquot, { draws });
+      const value = await inSlices(check, { onProgress, isStopped: () => redrawing !== mine });
+      return { ok: true, value };
+    } catch (error) {
+      return refused(error);
+    }
+  },
+
+  stopRedraws: (): void => {
+    redrawing += 1;
+  },
 
   report: (sheet: Sheet, madeOn: string): Outcome<ReportTexts> =>
     outcome(() => {
@@ -58,9 +86,13 @@ function outcome<T>(work: () => T): Outcome<T> {
   try {
     return { ok: true, value: work() };
   } catch (error) {
-    if (error instanceof Refusal) return { ok: false, refusal: error.toText() };
-    throw error;
+    return refused(error);
   }
+}
+
+function refused(error: unknown): Outcome<never> {
+  if (error instanceof Refusal) return { ok: false, refusal: error.toText() };
+  throw error;
 }
 
 expose(analysis);

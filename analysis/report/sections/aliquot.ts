@@ -1,5 +1,6 @@
 import { speciesLabel } from '../../sheet/defaults.ts';
 import type { Sheet } from '../../sheet/schema.ts';
+import { budgetAdvice } from '../../split/budget-advice.ts';
 import type { AliquotCurves, AliquotResult, Quantified } from '../../split/results.ts';
 import { doubtTitles } from '../doubt-titles.ts';
 import { fitFigureSvg } from '../figures/fit-figure.ts';
@@ -130,8 +131,9 @@ function doubtsHtml(sheet: Sheet, { doubts, notes }: AliquotResult): string {
 function budgetLine(sheet: Sheet, { budget, split }: AliquotResult): string {
   const [product] = split;
   if (budget.length === 0 || !product) return '';
+  const advice = budgetAdvice(budget) ?? '';
   const shares = budget
     .filter(({ share }) => share >= 0.005)
     .map(({ source, share }) => `${source} ${figuresText(100 * share)} %`);
-  return `<p class="soft small">${escaped(`What the uncertainty is made of (variance of the fraction of ${speciesLabel(sheet, product.species)}): ${shares.join('; ')}.`)}</p>`;
+  return `<p class="soft small">${escaped(`What the uncertainty is made of (variance of the fraction of ${speciesLabel(sheet, product.species)}): ${shares.join('; ')}. ${advice}`)}</p>`;
 }

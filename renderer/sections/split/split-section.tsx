@@ -2,18 +2,17 @@ import {
   type AliquotResult,
   answerText,
   doubtTitles,
-  figuresText,
   type Quantified,
   quantifiedText,
   type RunResult,
   type Sheet,
-  speciesLabel,
   speciesName,
 } from '../../../analysis/index.ts';
 import { SpeciesGlyph } from '../../species/species-glyph.tsx';
 import { whyNotFitted } from '../fit/why-not-fitted.ts';
 import type { SectionProps } from '../section.ts';
-import { adviceFor } from './advice.ts';
+import { Budget } from './budget.tsx';
+import { Redraws } from './redraws.tsx';
 import { SplitBar } from './split-bar.tsx';
 import { resultOf } from './split-summary.ts';
 import { wavelengthsText } from './wavelengths-text.ts';
@@ -42,6 +41,7 @@ export function SplitSection(props: SectionProps) {
       <Ledger sheet={sheet} result={result} />
       <Doubts sheet={sheet} result={result} />
       <Budget sheet={sheet} result={result} />
+      <Redraws sheet={sheet} aliquot={result.aliquot} />
     </>
   );
 }
@@ -195,36 +195,6 @@ function Doubts({ sheet, result }: { readonly sheet: Sheet; readonly result: Ali
           {note}
         </p>
       ))}
-    </div>
-  );
-}
-
-const smallestShare = 0.005;
-
-function Budget({ sheet, result }: { readonly sheet: Sheet; readonly result: AliquotResult }) {
-  const [largest] = result.budget;
-  if (!largest) return null;
-  const shown = result.budget.filter(({ share }) => share >= smallestShare);
-  const [product] = result.split;
-  return (
-    <div class="budget">
-      <h3>What the uncertainty is made of</h3>
-      <p class="soft">
-        Shares of the variance of the first product's fraction
-        {product ? ` (${speciesLabel(sheet, product.species)})` : ''}. Most comes from{' '}
-        {largest.source}. {adviceFor(largest.source)}
-      </p>
-      <ul>
-        {shown.map(({ source, share }) => (
-          <li key={source}>
-            <span class="budget-name">{source}</span>
-            <span class="budget-bar">
-              <span style={{ width: `${100 * share}%` }} />
-            </span>
-            <span class="budget-share">{figuresText(100 * share)} %</span>
-          </li>
-        ))}
-      </ul>
     </div>
   );
 }
