@@ -27,6 +27,26 @@ export function acceptance(
   return between(mean, upper, (deep + shallow) / 2);
 }
 
+/**
+ * Whether a reading is in the acceptance region: whether the region that reaches just as far as it
+ * holds no more than the confidence. The same test as `acceptance`, without looking for the ends.
+ *
+ * @param z the reading minus the mean, in standard deviations
+ */
+export function isAccepted(z: number, mean: number, upper: number, confidence: number): boolean {
+  const [low, high] = between(mean, upper, levelOf(z, mean, upper));
+  return normalCdf(high) - normalCdf(low) <= confidence;
+}
+
+/** Log likelihood ratio of a reading against the best allowed mean. */
+function levelOf(z: number, mean: number, upper: number): number {
+  const reading = mean + z;
+  if (reading < 0) return mean * z + (mean * mean) / 2;
+  if (reading <= upper) return (-z * z) / 2;
+  const room = upper - mean;
+  return -room * z + (room * room) / 2;
+}
+
 /** Readings, minus the mean, whose log likelihood ratio is at least `level` (at most 0). */
 function between(mean: number, upper: number, level: number): readonly [number, number] {
   const reach = Math.sqrt(-2 * level);

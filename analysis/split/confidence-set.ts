@@ -1,6 +1,6 @@
 import { normalQuantile } from '../distributions/normal.ts';
 import { studentTQuantile } from '../distributions/student-t.ts';
-import { acceptance } from './bounded-mean.ts';
+import { isAccepted } from './bounded-mean.ts';
 import { fiellerSet, type UncertainRatio } from './fieller.ts';
 
 export const confidence = 0.95;
@@ -87,10 +87,13 @@ function end(parameter: BoundedParameter, start: number, step: number): number {
   return outside === null ? inside : edge(parameter, inside, outside);
 }
 
+/** The bracket is a standard deviation or so wide: its ends are found to some 1e-13 of it. */
+const halvings = 42;
+
 function edge(parameter: BoundedParameter, accepts: number, refuses: number): number {
   let inside = accepts;
   let outside = refuses;
-  for (let k = 0; k < 60; k++) {
+  for (let k = 0; k < halvings; k++) {
     const middle = (inside + outside) / 2;
     if (accepted(parameter, middle)) inside = middle;
     else outside = middle;
@@ -102,17 +105,19 @@ function accepted(parameter: BoundedParameter, value: number): boolean {
   const z = parameter.departure(value) / widening(parameter);
   const { mean, room } = inStandardDeviations(parameter, value);
   if (isClear({ mean, room })) return Math.abs(z) <= plainQuantile;
-  const [low, high] = acceptance(mean, mean + room, confidence);
-  return z >= low && z <= high;
+  return isAccepted(z, mean, mean + room, confidence);
 }
 
 const studentFactors = new Map<number, number>();
+const mostFactors = 64;
 
 /** Student's 97.5 % quantile over the normal one. */
 export function studentFactor(df: number): number {
   const known = studentFactors.get(df);
   if (known !== undefined) return known;
   const factor = studentTQuantile((1 + confidence) / 2, df) / plainQuantile;
+  // a batch has as many as it has spectra, and they are not asked for again
+  if (studentFactors.size >= mostFactors) studentFactors.clear();
   studentFactors.set(df, factor);
   return factor;
 }

@@ -1,7 +1,7 @@
 import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
 import { normalCdf } from '../../../analysis/distributions/normal.ts';
-import { acceptance } from '../../../analysis/split/bounded-mean.ts';
+import { acceptance, isAccepted } from '../../../analysis/split/bounded-mean.ts';
 import {
   type BoundedParameter,
   confidence,
@@ -142,7 +142,7 @@ describe('the interval of a bounded parameter', () => {
           },
         });
         if (tries === 0) closed += 1;
-        // sixty halvings of a step leave rounding only
+        // forty-two halvings of a step leave 1e-13 of it
         for (const [k, end] of given.entries()) {
           expect(Math.abs(end - (tried[k] ?? Number.NaN))).toBeLessThan(1e-12);
         }
@@ -150,6 +150,18 @@ describe('the interval of a bounded parameter', () => {
     );
     // or the comparison would have been of one way with itself
     expect(closed).toBeGreaterThan(10);
+  });
+
+  it('tells whether a reading is taken in without looking for the ends', () => {
+    fc.assert(
+      fc.property(number(1e-6, 4), number(1e-6, 4), number(-6, 6), (mean, room, z) => {
+        const [low, high] = acceptance(mean, mean + room, confidence);
+        // within the halvings' rounding of an end either answer is right
+        fc.pre(Math.abs(z - low) > 1e-9 && Math.abs(z - high) > 1e-9);
+        expect(isAccepted(z, mean, mean + room, confidence)).toBe(z > low && z < high);
+      }),
+      { numRuns: 2000 },
+    );
   });
 
   it('takes in 95 % of the readings at every mean, by the bound as well', () => {
