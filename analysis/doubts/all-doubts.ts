@@ -11,6 +11,7 @@ import { strayLight } from './stray-light.ts';
 import { uncertaintyNotGiven } from './uncertainty-not-given.ts';
 import { unexplainedBand } from './unexplained-band.ts';
 import { wavelengthOffset } from './wavelength-offset.ts';
+import { windowSensitive } from './window-sensitive.ts';
 
 /** Every doubt, in the order in which a chemist should look at them. */
 const tests: readonly DoubtTest[] = [
@@ -18,6 +19,7 @@ const tests: readonly DoubtTest[] = [
   strayLight,
   wavelengthOffset,
   unexplainedBand,
+  windowSensitive,
   lookalikeStandards,
   negativeAmount,
   baselineLarge,

@@ -61,3 +61,19 @@ export function dot(a: Float64Array, b: Float64Array): number {
   for (let i = 0; i < a.length; i++) sum += a[i]! * b[i]!;
   return sum;
 }
+
+/** aᵀ M b for a symmetric matrix. */
+export function quadratic(
+  a: Float64Array,
+  matrix: readonly Float64Array[],
+  b: Float64Array = a,
+): number {
+  let sum = 0;
+  for (let k = 0; k < matrix.length; k++) {
+    const weight = a[k]!;
+    if (weight === 0) continue;
+    const row = matrix[k]!;
+    for (let l = 0; l < row.length; l++) sum += weight * b[l]! * row[l]!;
+  }
+  return sum;
+}

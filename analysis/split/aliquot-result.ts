@@ -4,7 +4,7 @@ import {
   commonCovariance,
   type ErrorSources,
   ownCovariance,
-  standardsNoiseOn,
+  standardsNoiseThrough,
 } from '../unmixing/error-sources.ts';
 import { separationOf } from '../unmixing/separation.ts';
 import type { Unmixing } from '../unmixing/unmix.ts';
@@ -76,8 +76,10 @@ export function fitResult(unmixing: Unmixing, wavelengthNm: Float64Array): FitRe
 function instrumentSds(unmixing: Unmixing): { shiftNm: number; strayLight: number } {
   const { shiftNm, strayLight, species, baseline } = unmixing;
   const first = species.length + baseline.length;
-  const joined = (sd: number, parameter: number): number =>
-    sd > 0 ? Math.sqrt(sd * sd + standardsNoiseOn(unmixing, parameter)) : 0;
+  const joined = (sd: number, parameter: number): number => {
+    const gain = unmixing.fit.gain[parameter];
+    return sd > 0 && gain ? Math.sqrt(sd * sd + standardsNoiseThrough(unmixing, gain)) : 0;
+  };
   return {
     shiftNm: joined(shiftNm.sd, first),
     strayLight: joined(strayLight.sd, first + (shiftNm.sd > 0 ? 1 : 0)),

@@ -1,3 +1,5 @@
+import { quadratic } from '../spectrum/vectors.ts';
+
 /**
  * Amounts (or shares) of the species with their uncertainty kept in two parts, so that what is
  * common to several aliquots can cancel. Matrices are species × species.
@@ -16,22 +18,6 @@ export interface AmountEstimate {
   readonly selfScale: Float64Array;
   /** Degrees of freedom behind `own`. */
   readonly df: number;
-}
-
-/** aᵀ M b for a symmetric matrix. */
-export function quadratic(
-  a: Float64Array,
-  matrix: readonly Float64Array[],
-  b: Float64Array = a,
-): number {
-  let sum = 0;
-  for (let k = 0; k < matrix.length; k++) {
-    const weight = a[k]!;
-    if (weight === 0) continue;
-    const row = matrix[k]!;
-    for (let l = 0; l < row.length; l++) sum += weight * b[l]! * row[l]!;
-  }
-  return sum;
 }
 
 /** Variance of a linear function of the amounts, and the degrees of freedom behind it (Welch-Satterthwaite). */

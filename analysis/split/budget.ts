@@ -1,12 +1,11 @@
 import { correlate } from '../spectrum/correlated-noise.ts';
-import { dot } from '../spectrum/vectors.ts';
+import { dot, quadratic } from '../spectrum/vectors.ts';
 import type { ErrorSources } from '../unmixing/error-sources.ts';
+import { fractionGradient } from '../unmixing/fraction-gradient.ts';
 import { spreadOut } from '../unmixing/noise-of-fit.ts';
 import { factorise } from '../unmixing/orthogonal.ts';
 import type { Unmixing } from '../unmixing/unmix.ts';
 import { withPriors } from '../unmixing/weighted-fit.ts';
-import { quadratic } from './amounts.ts';
-import { fractionGradient } from './fractions.ts';
 import type { BudgetShare } from './results.ts';
 import { projected } from './runs.ts';
 

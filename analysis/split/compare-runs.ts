@@ -1,7 +1,7 @@
 import { normalQuantile } from '../distributions/normal.ts';
 import { studentTUpper } from '../distributions/student-t.ts';
+import { quadratic } from '../spectrum/vectors.ts';
 import type { AliquotEstimate } from './aliquot-estimate.ts';
-import { quadratic } from './amounts.ts';
 import { plainQuantile, studentFactor } from './confidence-set.ts';
 import { type AliquotNumber, type PooledNumber, pooled, sumOfSquares } from './pooled.ts';
 import type { ComparisonResult, Quantified } from './results.ts';

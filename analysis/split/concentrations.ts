@@ -1,5 +1,6 @@
 import { studentTQuantile } from '../distributions/student-t.ts';
-import { type AmountEstimate, quadratic } from './amounts.ts';
+import { quadratic } from '../spectrum/vectors.ts';
+import type { AmountEstimate } from './amounts.ts';
 import { confidenceInterval } from './confidence-set.ts';
 import type { ConcentrationResult, Quantified } from './results.ts';
 

@@ -1,4 +1,5 @@
-import { type AmountEstimate, quadratic, varianceOf } from './amounts.ts';
+import { quadratic } from '../spectrum/vectors.ts';
+import { type AmountEstimate, varianceOf } from './amounts.ts';
 import { confidenceInterval } from './confidence-set.ts';
 import type { UncertainRatio } from './fieller.ts';
 import type { Quantified, RatioResult, SplitFraction } from './results.ts';
@@ -123,18 +124,6 @@ export function ratioFromFraction({
         : standardUncertainty / (1 - value) ** 2,
     interval95: [odds(interval95[0]), odds(interval95[1])],
   };
-}
-
-/** Gradient of the fraction of k among `among` by the amounts, at the unconstrained estimate. */
-export function fractionGradient(
-  amounts: Float64Array,
-  k: number,
-  among: readonly number[],
-): Float64Array {
-  const sum = among.reduce((total, l) => total + amounts[l]!, 0);
-  const gradient = new Float64Array(amounts.length);
-  for (const l of among) gradient[l] = ((l === k ? sum : 0) - amounts[k]!) / (sum * sum);
-  return gradient;
 }
 
 function weightsOf({ amounts }: AmountEstimate, among: readonly number[]): Float64Array {

@@ -1,8 +1,9 @@
 import type { Sheet, SheetRun } from '../sheet/schema.ts';
+import { quadratic } from '../spectrum/vectors.ts';
+import { fractionGradient } from '../unmixing/fraction-gradient.ts';
 import type { AliquotEstimate } from './aliquot-estimate.ts';
-import { quadratic } from './amounts.ts';
 import { confidenceInterval } from './confidence-set.ts';
-import { fractionGradient, ratioFromFraction } from './fractions.ts';
+import { ratioFromFraction } from './fractions.ts';
 import { type AliquotNumber, type PooledNumber, pooled, sumOfSquares } from './pooled.ts';
 import type { Quantified, RatioResult, RunResult, SplitFraction } from './results.ts';
 

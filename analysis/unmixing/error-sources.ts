@@ -102,14 +102,12 @@ export function commonEffects({ points, scale, standardsNoise }: ErrorSources): 
 }
 
 /**
- * Variance that the point noise of the standards gives to one further parameter of the fit (an
- * error of the instrument), in its unit squared.
+ * Variance that the point noise of the standards gives to what a gain reads off the fitted points, in
+ * its unit squared.
  *
- * @param parameter position among the columns of the fit
+ * @param gain one entry a fitted point
  */
-export function standardsNoiseOn(unmixing: Unmixing, parameter: number): number {
-  const gain = unmixing.fit.gain[parameter];
-  if (!gain) return 0;
+export function standardsNoiseThrough(unmixing: Unmixing, gain: Float64Array): number {
   let variance = 0;
   for (const [k, { solutions }] of unmixing.standards.entries()) {
     for (const s of solutions.keys()) {

@@ -34,6 +34,8 @@ export interface InstrumentModel {
 const mostSteps = 50;
 const smallestSingular = 1e-7;
 const mostSearches = 3;
+/** The polish takes over from a residual and slopes as orthogonal as this. */
+const nearEnough = 1e-3;
 
 /**
  * Errors of the instrument by variable projection: a Levenberg-Marquardt search on the whitened data
@@ -110,7 +112,7 @@ function searched(model: InstrumentModel): Float64Array {
         });
       },
     },
-    { searches: mostSearches },
+    { searches: mostSearches, enough: nearEnough },
   ).parameters;
 }
 

@@ -1,6 +1,6 @@
 import * as v from 'valibot';
 import { describe, expect, it } from 'vitest';
-import { quadratic } from '../../analysis/split/amounts.ts';
+import { quadratic } from '../../analysis/spectrum/vectors.ts';
 import { fiellerSet } from '../../analysis/split/fieller.ts';
 import { ratiosOf } from '../../analysis/split/fractions.ts';
 import { pooled } from '../../analysis/split/pooled.ts';

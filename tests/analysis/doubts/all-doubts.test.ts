@@ -112,3 +112,22 @@ describe('doubts', () => {
     ]);
   });
 });
+
+describe('a window that the answer depends on', () => {
+  const bandAt = (centre: number, height: number) =>
+    syntheticSheet({
+      extra: (nm: number) => height * Math.exp(-0.5 * ((nm - centre) / 8) ** 2),
+    });
+
+  it('is told where a part of it says something else', () => {
+    const doubt = first(bandAt(252, 0.03)).doubts.find(({ code }) => code === 'window-sensitive');
+    expect(doubt?.message).toMatch(/Fitted from \d+ to \d+ nm only/);
+    expect(doubt?.atNm?.length).toBeGreaterThanOrEqual(2);
+  });
+
+  it('is not, where the standards make it all', () => {
+    for (let seed = 1; seed <= 20; seed++) {
+      expect(codesOf(first(syntheticSheet({ seed })))).not.toContain('window-sensitive');
+    }
+  });
+});
