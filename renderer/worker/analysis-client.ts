@@ -5,6 +5,7 @@ import type {
   ReadOptions,
   RedrawCheck,
   Sheet,
+  WindowMap,
 } from '../../analysis/index.ts';
 import type { AnalysisWorker, Outcome, ReportTexts } from './analysis.worker.ts';
 
@@ -47,6 +48,9 @@ export const readFileBytes = (
 export const reportTexts = (sheet: Sheet): Promise<Outcome<ReportTexts>> =>
   asked(async (calls) => calls.report(sheet, new Date().toISOString()));
 
+export const mapWindows = (sheet: Sheet, aliquot: string): Promise<Outcome<WindowMap>> =>
+  asked(async (calls) => calls.windowMap(sheet, aliquot));
+
 /** Null if it was stopped, or if another check took its place. `onProgress` is given the draws done. */
 export const redrawAliquot = (
   sheet: Sheet,
@@ -56,4 +60,7 @@ export const redrawAliquot = (
 ): Promise<Outcome<RedrawCheck | null>> =>
   asked(async (calls) => calls.redraw(sheet, aliquot, draws, proxy(onProgress)));
 
-export const stopRedraws = (): Promise<void> => asked(async (calls) => calls.stopRedraws());
+/** A worker that is not there has nothing to stop. */
+export function stopRedraws(): void {
+  void started?.calls.stopRedraws();
+}

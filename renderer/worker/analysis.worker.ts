@@ -14,6 +14,8 @@ import {
   resultsJson,
   type Sheet,
   sheetSources,
+  type WindowMap,
+  windowMap,
 } from '../../analysis/index.ts';
 import { inSlices } from './in-slices.ts';
 
@@ -62,6 +64,9 @@ const analysis = {
   stopRedraws: (): void => {
     redrawing += 1;
   },
+
+  windowMap: (sheet: Sheet, aliquot: string): Outcome<WindowMap> =>
+    outcome(() => windowMap(sheet, noFiles, aliquot)),
 
   report: (sheet: Sheet, madeOn: string): Outcome<ReportTexts> =>
     outcome(() => {

@@ -23,9 +23,10 @@ interface Asked extends RedrawsProps {
 type Check =
   | { readonly is: 'running'; readonly asked: Asked; readonly done: number; readonly began: number }
   | { readonly is: 'done'; readonly asked: Asked; readonly check: RedrawCheck }
-  | { readonly is: 'stopped' }
+  | { readonly is: 'stopped'; readonly why: string }
   | { readonly is: 'failed'; readonly why: string };
 
+const wasStopped = 'The check was stopped.';
 const choices = [500, usualDraws, 10_000];
 
 /** The Monte Carlo check of the aliquot that is shown, on request. */
@@ -35,19 +36,28 @@ export function Redraws({ sheet, aliquot }: RedrawsProps) {
   const present = useRef({ sheet, aliquot });
   present.current = { sheet, aliquot };
   const begun = useRef(0);
+  const startButton = useRef<HTMLButtonElement>(null);
+  const cancelButton = useRef<HTMLButtonElement>(null);
   const headId = useId();
   const isRunning = check?.is === 'running';
 
   useEffect(() => {
     // what runs answers for a sheet that is no longer there
-    if (isRunning && (check.asked.sheet !== sheet || check.asked.aliquot !== aliquot)) stop();
+    if (isRunning && (check.asked.sheet !== sheet || check.asked.aliquot !== aliquot)) {
+      stop('The check was stopped, as it was of what is no longer shown.');
+    }
   });
-  useEffect(() => () => void (begun.current > 0 && stopRedraws()), []);
+  useEffect(() => stopRedraws, []);
 
-  const stop = (): void => {
+  /** The button goes with the check; who stands on it is not dropped to the top of the page. */
+  const leaveCancel = (): void => {
+    if (cancelButton.current === document.activeElement) startButton.current?.focus();
+  };
+  const stop = (why: string): void => {
     begun.current += 1;
-    setCheck({ is: 'stopped' });
-    void stopRedraws();
+    leaveCancel();
+    setCheck({ is: 'stopped', why });
+    stopRedraws();
   };
   const start = async (): Promise<void> => {
     begun.current += 1;
@@ -55,7 +65,12 @@ export function Redraws({ sheet, aliquot }: RedrawsProps) {
     const asked: Asked = { ...present.current, draws };
     const began = performance.now();
     const say = (next: Check): void => {
-      if (begun.current === mine) setCheck(next);
+      if (begun.current !== mine) return;
+      setCheck(next);
+      if (next.is === 'running') return;
+      leaveCancel();
+      // word of progress may be overtaken by the answer
+      begun.current += 1;
     };
     say({ is: 'running', asked, done: 0, began });
     try {
@@ -63,7 +78,7 @@ export function Redraws({ sheet, aliquot }: RedrawsProps) {
         say({ is: 'running', asked, done, began }),
       );
       if (!outcome.ok) say({ is: 'failed', why: refusalSentence(outcome.refusal) });
-      else if (outcome.value === null) say({ is: 'stopped' });
+      else if (outcome.value === null) say({ is: 'stopped', why: wasStopped });
       else say({ is: 'done', asked, check: outcome.value });
     } catch {
       say({ is: 'failed', why: 'The check broke off by a fault of the program. Start it again.' });
@@ -80,7 +95,14 @@ export function Redraws({ sheet, aliquot }: RedrawsProps) {
         check of the intervals above (Monte Carlo, JCGM 101).
       </p>
       <div class="redraws-row">
-        <button type="button" disabled={isRunning} onClick={() => void start()}>
+        <button
+          type="button"
+          ref={startButton}
+          aria-disabled={isRunning}
+          onClick={() => {
+            if (!isRunning) void start();
+          }}
+        >
           Check by redraws
         </button>
         <Choice
@@ -99,7 +121,7 @@ export function Redraws({ sheet, aliquot }: RedrawsProps) {
                 elapsedMs: performance.now() - check.began,
               })}
             </span>
-            <button type="button" class="quiet" onClick={stop}>
+            <button type="button" class="quiet" ref={cancelButton} onClick={() => stop(wasStopped)}>
               Cancel
             </button>
           </>
@@ -117,8 +139,7 @@ export function Redraws({ sheet, aliquot }: RedrawsProps) {
 function spoken(check: Check | null, isStale: boolean): string {
   if (check === null) return '';
   if (check.is === 'running') return 'Redrawing…';
-  if (check.is === 'stopped') return 'The check was stopped.';
-  if (check.is === 'failed') return check.why;
+  if (check.is === 'stopped' || check.is === 'failed') return check.why;
   if (isStale) {
     return `This check is of aliquot ${check.check.aliquot} before the sheet or the choice changed. Run it again.`;
   }
