@@ -44,10 +44,9 @@ const fewestPoints = 24;
  * that white noise stays white. Negative power is cut, so the answer is a true correlation.
  */
 export function noiseCorrelation(samples: readonly NoiseSample[]): NoiseCorrelation {
-  const usable = samples.filter((sample) => degreesOf(sample) >= fewestPoints);
-  if (usable.length === 0) return independent;
-  const known = usable.map(knownSample);
-  const freedom = usable.reduce((sum, sample) => sum + degreesOf(sample), 0);
+  const known = samples.map(knownSample).filter(({ degrees }) => degrees >= fewestPoints);
+  if (known.length === 0) return independent;
+  const freedom = known.reduce((sum, { degrees }) => sum + degrees, 0);
   const last = lastLag(known, freedom);
   if (last === 0) return { ...independent, df: freedom };
   let rho: Float64Array = Float64Array.of(1);
@@ -181,13 +180,16 @@ function knownSample(sample: NoiseSample): KnownSample {
   if (before) return before;
   const lags = Math.min(mostLags, Math.floor(sample.values.length / 4));
   const sums = lagSums(sample.values, lags);
-  const known = { sample, sums, pairs: lagPairs(sample.used, lags) };
+  const pairs = lagPairs(sample.used, lags);
+  const known = { sample, degrees: degreesOf(sample), sums, pairs };
   knownSums.set(sample, known);
   return known;
 }
 
 interface KnownSample {
   readonly sample: NoiseSample;
+  /** Points used, less what was fitted. */
+  readonly degrees: number;
   /** Σ u(i) u(i + lag). */
   readonly sums: Float64Array;
   /** Number of such pairs. */

@@ -2,15 +2,15 @@ import { Refusal } from '../refusal.ts';
 import type { FitSettings } from '../sheet/defaults.ts';
 import { correlate, type NoiseCorrelation } from '../spectrum/correlated-noise.ts';
 import type { NoiseModel } from '../spectrum/noise.ts';
-import { dot, orthonormal, projectedOut, taken } from '../spectrum/vectors.ts';
+import { divided, dot, orthonormal, projectedOut, rooted, taken } from '../spectrum/vectors.ts';
 import type { SampledNoise } from '../standards/contrasts.ts';
 import type { MolarAbsorptivity } from '../standards/molar-absorptivity.ts';
 import type { SpeciesStandard } from '../standards/species-standard.ts';
+import { commonWeights } from './batch/common-weights.ts';
 import { choosePoints, pointUse, usedPoints } from './choose-points.ts';
 import type { BaselineName, Design } from './design.ts';
 import { firstNoise, noiseModelOf } from './noise-model.ts';
 import { type FoundBand, type NoiseOfFit, noiseOfFit } from './noise-of-fit.ts';
-import { nonNegativeLeastSquares } from './non-negative.ts';
 import { pointCovariance } from './point-covariance.ts';
 import {
   largestShiftNm,
@@ -222,13 +222,12 @@ function drawnParameters(
 ): Float64Array {
   const negative = fit.parameters.slice(0, size).some((amount) => amount < 0);
   if (!negative && fit.unseen.length === 0) return fit.parameters;
-  const sd = fit.variance.map(Math.sqrt);
   const columns = fit.whitened.slice(0, size + design.baseline.length);
-  return nonNegativeLeastSquares(
+  return commonWeights(
     columns,
-    measured.map((value, i) => value / sd[i]!),
+    divided(measured, rooted(fit.variance)),
     columns.map((_, k) => k >= size),
-  ).x;
+  );
 }
 
 function refuseTooFew(
