@@ -32,9 +32,8 @@ export const windowSensitive: DoubtTest = (evidence) => {
   const gradient = fractionGradient(unmixing.amounts, first, products);
   const widening = Number.isFinite(unmixing.df) ? 1 + 2.5 / unmixing.df : 1;
   const own = uncertaintyOf(evidence, gradient);
-  const moved = narrowedFits(unmixing, gradient, narrowings)
+  const moved = narrowedFits(unmixing, gradient, narrowings, changeOfNote * own)
     .filter(({ change, sd }) => Math.abs(change) > limit * widening * sd)
-    .filter(({ change }) => Math.abs(change) > changeOfNote * own)
     .sort((a, b) => Math.abs(b.change / b.sd) - Math.abs(a.change / a.sd))[0];
   if (!moved) return [];
   const nmAt = (point: number): number => crude.wavelengthNm[unmixing.at[point] ?? 0] ?? 0;

@@ -38,11 +38,13 @@ const smallestSingular = 1e-7;
  * Windows that keep too few points are left out.
  *
  * @param gradient of the quantity by the amounts, one entry a species
+ * @param leastChange changes smaller than this are of no interest and left out: most of the work is in their `sd`
  */
 export function narrowedFits(
   unmixing: Unmixing,
   gradient: Float64Array,
   narrowings: readonly Narrowing[],
+  leastChange = 0,
 ): NarrowedFit[] {
   const points = unmixing.at.length;
   const unknowns = unmixing.fit.whitened.length;
@@ -50,13 +52,20 @@ export function narrowedFits(
     const from = Math.round(narrowing.below * points);
     const to = points - 1 - Math.round(narrowing.above * points);
     if (to - from + 1 < pointsAnUnknown * unknowns) return [];
-    return narrowedFit(unmixing, gradient, narrowing, from, to);
+    return narrowedFit({ unmixing, gradient, leastChange }, narrowing, from, to);
   });
 }
 
 function narrowedFit(
-  unmixing: Unmixing,
-  gradient: Float64Array,
+  {
+    unmixing,
+    gradient,
+    leastChange,
+  }: {
+    readonly unmixing: Unmixing;
+    readonly gradient: Float64Array;
+    readonly leastChange: number;
+  },
   narrowing: Narrowing,
   from: number,
   to: number,
@@ -65,14 +74,20 @@ function narrowedFit(
   const columns = fit.whitened.map((column) => column.subarray(from, to + 1));
   const factors = factorise(withPriors(columns, fit.priors), undefined, smallestSingular);
   if (factors.rank < columns.length) return [];
+  const right = new Float64Array(columns[0]!.length + fit.priors.length);
+  for (let i = from; i <= to; i++) right[i - from] = measured[i]! / Math.sqrt(fit.variance[i]!);
+  const narrowed = factors.solvePlain(right).slice(0, amounts.length);
+  const change = gradient.reduce(
+    (sum, weight, k) => sum + weight * (narrowed[k]! - amounts[k]!),
+    0,
+  );
+  if (Math.abs(change) < leastChange) return [];
   const rows = factors.pseudoInverse();
-  const narrowed = new Float64Array(amounts.length);
   const difference = new Float64Array(at.length);
   for (const [k, weight] of gradient.entries()) {
     const [row, whole] = [rows[k]!, fit.gain[k]!];
     for (let i = 0; i < difference.length; i++) {
       const gain = i < from || i > to ? 0 : row[i - from]! / Math.sqrt(fit.variance[i]!);
-      narrowed[k]! += gain * measured[i]!;
       difference[i]! += weight * (gain - whole[i]!);
     }
   }
@@ -82,9 +97,5 @@ function narrowedFit(
   );
   const variance =
     dot(noise, correlate(correlation.rho, noise)) + standardsNoiseThrough(unmixing, difference);
-  const change = gradient.reduce(
-    (sum, weight, k) => sum + weight * (narrowed[k]! - amounts[k]!),
-    0,
-  );
   return [{ narrowing, from, to, amounts: narrowed, change, sd: Math.sqrt(variance) }];
 }
