@@ -85,3 +85,4 @@ export {
   type SplitFraction,
   type StandardCurves,
 } from './split/results.ts';
+export { type WindowMap, type WindowMapCell, windowMap } from './window-map.ts';

@@ -76,6 +76,7 @@ function narrowedFit(
   if (factors.rank < columns.length) return [];
   const right = new Float64Array(columns[0]!.length + fit.priors.length);
   for (let i = from; i <= to; i++) right[i - from] = measured[i]! / Math.sqrt(fit.variance[i]!);
+  for (const [m, { value, sd }] of fit.priors.entries()) right[to - from + 1 + m] = value / sd;
   const narrowed = factors.solvePlain(right).slice(0, amounts.length);
   const change = gradient.reduce(
     (sum, weight, k) => sum + weight * (narrowed[k]! - amounts[k]!),

@@ -6,6 +6,7 @@ import { FitFields } from './fit-fields.tsx';
 import { FitFigures } from './fit-figures.tsx';
 import { measuredCurves } from './measured-curves.ts';
 import { whyNotFitted } from './why-not-fitted.ts';
+import { WindowMapPanel } from './window-map.tsx';
 
 export { fitSummary } from './fit-summary.ts';
 
@@ -45,6 +46,15 @@ export function FitSection(props: SectionProps) {
         <FitFields sheet={sheet} change={change} low={low} high={high} />
         {result && <FitFigures sheet={sheet} fit={result.fit} />}
       </div>
+      {result && (
+        <WindowMapPanel
+          sheet={sheet}
+          aliquot={result.aliquot}
+          onWindow={(windowNm) =>
+            change('take a window of the map', (before) => setFit(before, { windowNm }))
+          }
+        />
+      )}
     </>
   );
 }
