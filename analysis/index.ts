@@ -6,6 +6,7 @@ export {
   usualDraws,
 } from './check-by-redraws.ts';
 export type { Doubt } from './doubts/doubt.ts';
+export { estimateMissing, type MissingEstimate } from './estimate-missing.ts';
 export { programName } from './program.ts';
 export { type PreparedSheet, prepare, quantify, quantifyAliquot } from './quantify.ts';
 export { embeddedFrom } from './reading/embedded.ts';
