@@ -1,5 +1,6 @@
 import { proxy, type Remote, wrap } from 'comlink';
 import type {
+  MissingEstimate,
   Quantification,
   Reading,
   ReadOptions,
@@ -47,6 +48,9 @@ export const readFileBytes = (
 
 export const reportTexts = (sheet: Sheet): Promise<Outcome<ReportTexts>> =>
   asked(async (calls) => calls.report(sheet, new Date().toISOString()));
+
+export const estimateMissingSpectrum = (sheet: Sheet): Promise<Outcome<MissingEstimate>> =>
+  asked(async (calls) => calls.estimateMissing(sheet));
 
 export const mapWindows = (sheet: Sheet, aliquot: string): Promise<Outcome<WindowMap>> =>
   asked(async (calls) => calls.windowMap(sheet, aliquot));

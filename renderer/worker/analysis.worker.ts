@@ -1,6 +1,8 @@
 import { expose } from 'comlink';
 import {
   checkByRedraws,
+  estimateMissing,
+  type MissingEstimate,
   type Quantification,
   quantify,
   type Reading,
@@ -64,6 +66,9 @@ const analysis = {
   stopRedraws: (): void => {
     redrawing += 1;
   },
+
+  estimateMissing: (sheet: Sheet): Outcome<MissingEstimate> =>
+    outcome(() => estimateMissing(sheet, noFiles)),
 
   windowMap: (sheet: Sheet, aliquot: string): Outcome<WindowMap> =>
     outcome(() => windowMap(sheet, noFiles, aliquot)),

@@ -1,10 +1,11 @@
-import { fitSettings, setFit } from '../../../analysis/index.ts';
+import { type AliquotResult, fitSettings, setFit } from '../../../analysis/index.ts';
 import { FitPlot } from '../../plots/fit-plot.tsx';
 import type { SectionProps } from '../section.ts';
 import { AliquotPicker } from './aliquot-picker.tsx';
 import { FitFields } from './fit-fields.tsx';
 import { FitFigures } from './fit-figures.tsx';
 import { measuredCurves } from './measured-curves.ts';
+import { MissingSpectrumPanel } from './missing-spectrum.tsx';
 import { whyNotFitted } from './why-not-fitted.ts';
 import { WindowMapPanel } from './window-map.tsx';
 
@@ -22,6 +23,7 @@ export function FitSection(props: SectionProps) {
   const limits = curves && ([curves.wavelengthNm[0], curves.wavelengthNm.at(-1)] as const);
   const [low, high] = fitSettings(sheet).windowNm ?? result?.fit.windowNm ?? limits ?? [];
   const trouble = whyNotFitted(props);
+  const withBand = (quantification?.results.aliquots ?? []).filter(hasUnexplainedBand);
   return (
     <>
       <AliquotPicker {...props} />
@@ -55,8 +57,15 @@ export function FitSection(props: SectionProps) {
           }
         />
       )}
+      {result && hasUnexplainedBand(result) && withBand.length > 1 && (
+        <MissingSpectrumPanel sheet={sheet} aliquots={withBand.length} />
+      )}
     </>
   );
+}
+
+function hasUnexplainedBand({ doubts }: AliquotResult): boolean {
+  return doubts.some(({ code }) => code === 'unexplained-band');
 }
 
 const noDoubts: readonly [] = [];
