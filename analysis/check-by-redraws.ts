@@ -72,9 +72,9 @@ export function* checkByRedraws(
   const rows = quantitiesOf(result, unmixing.species, productPositions(prepared));
   const values = rows.map(() => new Float64Array(draws));
   const random = randomNumbers(seed);
+  const { factor, relativeStandardUncertainty } = estimate().dilution;
   for (let draw = 0; draw < draws; draw++) {
     const { drawn } = unmix(redrawnInput(input, unmixing, random));
-    const { factor, relativeStandardUncertainty } = estimate.dilution;
     const dilution = factor * Math.exp(relativeStandardUncertainty * random.normal());
     for (const [q, { read }] of rows.entries()) values[q]![draw] = read(drawn, dilution);
     yield draw + 1;

@@ -40,9 +40,10 @@ export function quantify(sheet: Sheet, readings: ReadonlyMap<string, Reading>): 
     }
   }
   const products = productPositions(prepared);
+  const estimates = done.map(({ estimate }) => estimate());
   const runs = (sheet.runs ?? []).map((run) => ({
     run,
-    aliquots: done.map(({ estimate }) => estimate).filter((estimate) => estimate.run === run.id),
+    aliquots: estimates.filter((estimate) => estimate.run === run.id),
   }));
   return {
     results: {
@@ -59,7 +60,7 @@ export function quantify(sheet: Sheet, readings: ReadonlyMap<string, Reading>): 
       refused,
       warnings: unknownMembers(sheet),
     },
-    curves: done.map(({ curves }) => curves),
+    curves: done.map(({ curves }) => curves()),
     standards: prepared.library.standards.map(standardCurves),
   };
 }
@@ -99,8 +100,9 @@ const mostLibraries = 100;
 
 export interface QuantifiedAliquot {
   readonly result: AliquotResult;
-  readonly curves: AliquotCurves;
-  readonly estimate: AliquotEstimate;
+  /** What is drawn of it, and what its run needs of it: worked out when asked for, as a batch needs neither. */
+  readonly curves: () => AliquotCurves;
+  readonly estimate: () => AliquotEstimate;
 }
 
 /** One aliquot: spectrum, unmixing, uncertainty, split, doubts. Throws a `Refusal` where it cannot be. */
@@ -122,6 +124,7 @@ export function quantifyAliquot(
     crude,
     unmixing,
     sources,
+    covariance: estimate.own.map((row, k) => row.map((own, l) => own + estimate.common[k]![l]!)),
     settings,
     amounts: amountEvidence(concentrations),
     products,
@@ -144,8 +147,14 @@ export function quantifyAliquot(
         ...(dilution.note ? [dilution.note] : []),
       ],
     },
-    curves: aliquotCurves(aliquot.id, crude, unmixing, settings),
-    estimate: { aliquot: aliquot.id, run, estimate, effects: commonEffects(sources), dilution },
+    curves: () => aliquotCurves(aliquot.id, crude, unmixing, settings),
+    estimate: () => ({
+      aliquot: aliquot.id,
+      run,
+      estimate,
+      effects: commonEffects(sources),
+      dilution,
+    }),
   };
 }
 

@@ -9,6 +9,8 @@ export interface Evidence {
   readonly crude: Spectrum;
   readonly unmixing: Unmixing;
   readonly sources: ErrorSources;
+  /** Covariance of the amounts from all sources, (mol/L)². */
+  readonly covariance: readonly Float64Array[];
   readonly settings: FitSettings;
   /** What the split says of each species, in the order of the unmixing. */
   readonly amounts: readonly AmountEvidence[];

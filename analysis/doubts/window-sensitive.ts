@@ -1,9 +1,8 @@
 import { normalQuantile } from '../distributions/normal.ts';
 import { quadratic } from '../spectrum/vectors.ts';
-import { commonCovariance, ownCovariance } from '../unmixing/error-sources.ts';
 import { fractionGradient } from '../unmixing/fraction-gradient.ts';
 import { type Narrowing, narrowedFits } from '../unmixing/narrowed-windows.ts';
-import type { DoubtTest, Evidence } from './evidence.ts';
+import type { DoubtTest } from './evidence.ts';
 import { nmText, percentText } from './wording.ts';
 
 /** The windows tried: a fifth and two fifths off either end, a fifth off both. */
@@ -31,7 +30,7 @@ export const windowSensitive: DoubtTest = (evidence) => {
   if (first === undefined || products.length < 2 || !(share > 0)) return [];
   const gradient = fractionGradient(unmixing.amounts, first, products);
   const widening = Number.isFinite(unmixing.df) ? 1 + 2.5 / unmixing.df : 1;
-  const own = uncertaintyOf(evidence, gradient);
+  const own = Math.sqrt(quadratic(gradient, evidence.covariance));
   const moved = narrowedFits(unmixing, gradient, narrowings, changeOfNote * own)
     .filter(({ change, sd }) => Math.abs(change) > limit * widening * sd)
     .sort((a, b) => Math.abs(b.change / b.sd) - Math.abs(a.change / a.sd))[0];
@@ -57,9 +56,3 @@ export const windowSensitive: DoubtTest = (evidence) => {
     },
   ];
 };
-
-/** Standard uncertainty of the share from all sources. */
-function uncertaintyOf({ sources }: Evidence, gradient: Float64Array): number {
-  const own = quadratic(gradient, ownCovariance(sources));
-  return Math.sqrt(own + quadratic(gradient, commonCovariance(sources)));
-}

@@ -18,12 +18,12 @@ const fewestForNoise = 1;
 /** and from which its two parts are told apart. */
 const fewestForTwoParts = 30;
 
-/** A noise to begin with: stated, or from the spectrum as it is. */
-export function firstNoise({ crude, settings }: Measurement): NoiseModel {
-  return (
-    settings.noise ??
-    estimateNoise(crude.wavelengthNm, crude.values) ?? { constant: 1e-3, transmittance: 0 }
-  );
+/** Proportions of an ordinary instrument, for the weights of a first fit whose residual tells the noise. */
+const ordinaryNoise: NoiseModel = { constant: 3e-4, transmittance: 2e-4 };
+
+/** A noise to begin with. */
+export function firstNoise({ settings }: Measurement): NoiseModel {
+  return settings.noise ?? ordinaryNoise;
 }
 
 export interface FoundNoise {

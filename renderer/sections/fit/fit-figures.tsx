@@ -50,7 +50,7 @@ export function FitFigures({ sheet, fit }: Props) {
           <dd>{withUncertainty(absorbance, 'milliabsorbance', 'mAU')}</dd>
         </Fragment>
       ))}
-      <dt>made less certain by likeness of the standards</dt>
+      <dt>likeness of standards costs</dt>
       <dd>{separationText(sheet, fit)}</dd>
     </dl>
   );

@@ -65,6 +65,7 @@ interface MapTableProps {
 function MapTable({ sheet, map, isStale, onWindow }: MapTableProps) {
   const name = speciesLabel(sheet, map.species);
   const [top = []] = map.rows;
+  const decimals = decimalsOf(map);
   return (
     <table class="ledger" data-stale={isStale || undefined}>
       <caption>
@@ -89,7 +90,11 @@ function MapTable({ sheet, map, isStale, onWindow }: MapTableProps) {
             </th>
             {row.map((cell, column) => (
               <td key={column} class="number">
-                {cell ? <Cell cell={cell} name={name} onWindow={onWindow} /> : '–'}
+                {cell ? (
+                  <Cell cell={cell} name={name} decimals={decimals} onWindow={onWindow} />
+                ) : (
+                  '–'
+                )}
               </td>
             ))}
           </tr>
@@ -102,12 +107,13 @@ function MapTable({ sheet, map, isStale, onWindow }: MapTableProps) {
 interface CellProps {
   readonly cell: WindowMapCell;
   readonly name: string;
+  readonly decimals: number;
   readonly onWindow: WindowMapProps['onWindow'];
 }
 
-function Cell({ cell, name, onWindow }: CellProps) {
+function Cell({ cell, name, decimals, onWindow }: CellProps) {
   const [low, high] = cell.windowNm;
-  const share = shareText(cell);
+  const share = (100 * cell.fraction).toFixed(decimals);
   const verdict = cell.agrees ? 'agrees with the whole window' : 'departs from the whole window';
   return (
     <button
@@ -123,10 +129,11 @@ function Cell({ cell, name, onWindow }: CellProps) {
   );
 }
 
-/** With as many decimals as tell a departure from noise. */
-function shareText({ fraction, departureSd }: WindowMapCell): string {
-  const decimals = departureSd > 0 ? Math.ceil(-Math.log10(100 * departureSd)) + 1 : 2;
-  return (100 * fraction).toFixed(Math.min(Math.max(decimals, 1), 4));
+/** As many as tell the least certain cell's departure from noise, the same in all. */
+function decimalsOf({ rows }: WindowMap): number {
+  const largest = Math.max(...rows.flat().map((cell) => cell?.departureSd ?? 0));
+  const decimals = largest > 0 ? Math.ceil(-Math.log10(100 * largest)) + 1 : 2;
+  return Math.min(Math.max(decimals, 1), 4);
 }
 
 function nmText(nm: number): string {
