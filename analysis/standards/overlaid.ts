@@ -26,6 +26,8 @@ export function overlaid(onto: Solution, solution: Solution): Overlaid {
   };
 }
 
+const smallestOfNote = 1e-100;
+
 /** Concentration × path of a solution; a spectrum given as ε counts as one recorded up to an absorbance of 1. */
 export function absorbanceScale({ absorbancePerEpsilon, epsilon, usable }: Solution): number {
   if (absorbancePerEpsilon !== null) return absorbancePerEpsilon;
@@ -33,6 +35,6 @@ export function absorbanceScale({ absorbancePerEpsilon, epsilon, usable }: Solut
   for (const [i, value] of epsilon.entries()) {
     if (usable[i] === 1 && value > largest) largest = value;
   }
-  const scale = 1 / largest;
-  return Number.isFinite(scale) ? scale : 1;
+  // of a spectrum that is nothing but rounding no scale is told
+  return largest > smallestOfNote ? 1 / largest : 1;
 }
