@@ -36,11 +36,23 @@ const solution: fc.Arbitrary<Solution> = fc
     };
   });
 
+/** Several of them, each with a name of its own as the sheet asks. */
+const solutions = fc.array(solution, { minLength: 1, maxLength: 5 }).map((some) =>
+  some.map((each, index) => ({
+    ...each,
+    standard: `S${index + 1}`,
+    scaleErrors: each.scaleErrors.map((error) => ({
+      ...error,
+      source: `dilution of S${index + 1}`,
+    })),
+  })),
+);
+
 describe('solutions of any kind', () => {
   it('are combined into numbers, never into none', () => {
     fc.assert(
-      fc.property(fc.array(solution, { minLength: 1, maxLength: 5 }), (solutions) => {
-        const standard = combineSolutions(solutions);
+      fc.property(solutions, (some) => {
+        const standard = combineSolutions(some);
         for (const number of [
           ...standard.factors,
           ...standard.offsets,
