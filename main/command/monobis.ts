@@ -6,6 +6,9 @@ process.stdout.on('error', (error: NodeJS.ErrnoException) => {
   process.exit(error.code === 'EPIPE' ? exitCodes.done : exitCodes.fault);
 });
 
+// what cannot be said to anyone is no fault of the work
+process.stderr.on('error', () => {});
+
 process.exitCode = await run(process.argv.slice(2), {
   result: (text) =>
     new Promise((resolve) => {
