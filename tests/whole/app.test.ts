@@ -103,9 +103,9 @@ describe('the fit window', () => {
     await openTheSample(page);
     const before = await answer(page);
     const from = page.getByLabel('Window from, nm');
-    await from.fill('300');
+    await from.fill('350');
     await from.press('Enter');
-    await expect.poll(() => page.locator('.figures dd').first().textContent()).toBe('161');
+    await expect.poll(() => page.locator('.figures dd').first().textContent()).toBe('111');
     expect(await answer(page)).not.toBe(before);
     await page.getByRole('button', { name: 'Undo' }).click();
     await expect.poll(() => answer(page)).toBe(before);
